@@ -1,0 +1,115 @@
+package bias
+
+import (
+	"iter"
+	"math"
+	"strings"
+
+	"triodeck/analysis/quantity"
+)
+
+// Rows gives every MOSFET of a run under its hierarchical name, in card order.
+func (r *Result) Rows(run *Run) iter.Seq[Row] {
+	return func(yield func(Row) bool) {
+		for _, c := range run.Roots {
+			if !c.rows(c.prefix(), yield) {
+				return
+			}
+		}
+	}
+}
+
+func (c *Context) rows(prefix string, yield func(Row) bool) bool {
+	for _, d := range c.Devices {
+		if !yield(Row{prefix + d.Device.Spelt, c, d}) {
+			return false
+		}
+	}
+	for _, ch := range c.Children {
+		if ch.Context != nil && !ch.Context.rows(prefix+ch.Instance.Spelt+".", yield) {
+			return false
+		}
+	}
+	return true
+}
+
+// prefix heads the paths of a root: the name of a subckt that stands alone.
+func (c *Context) prefix() string {
+	if !c.Alone {
+		return ""
+	}
+	return aloneName(c.Cell) + "."
+}
+
+// Contexts gives every distinct context of a run once, with the path of its
+// first instance ("" for the top level, "tgate" for a subckt that stands alone).
+func (r *Result) Contexts(run *Run) iter.Seq2[string, *Context] {
+	return func(yield func(string, *Context) bool) {
+		seen := map[*Context]bool{}
+		var visit func(prefix string, c *Context) bool
+		visit = func(prefix string, c *Context) bool {
+			if seen[c] {
+				return true
+			}
+			seen[c] = true
+			if !yield(strings.TrimSuffix(prefix, "."), c) {
+				return false
+			}
+			for _, ch := range c.Children {
+				if ch.Context != nil && !visit(prefix+ch.Instance.Spelt+".", ch.Context) {
+					return false
+				}
+			}
+			return true
+		}
+		for _, c := range run.Roots {
+			if !visit(c.prefix(), c) {
+				return
+			}
+		}
+	}
+}
+
+// At tells the ranged nodes' voltages at a sample: "v(in)=1.600 V"; "" if
+// nothing is ranged.
+func (c *Context) At(sample int) string {
+	var parts []string
+	for _, a := range c.Axes {
+		if sample >= 0 && sample < len(a.Values) {
+			parts = append(parts, "v("+a.Node+")="+quantity.Volts(a.Values[sample]))
+		}
+	}
+	return strings.Join(parts, ", ")
+}
+
+// counts is how many instances see each context of a run, at most MaxInt32.
+func (run *Run) counts() map[*Context]int {
+	var order []*Context // parents before children
+	done := map[*Context]bool{}
+	var visit func(c *Context)
+	visit = func(c *Context) {
+		if done[c] {
+			return
+		}
+		done[c] = true
+		for _, ch := range c.Children {
+			if ch.Context != nil {
+				visit(ch.Context)
+			}
+		}
+		order = append(order, c)
+	}
+	n := map[*Context]int{}
+	for _, c := range run.Roots {
+		visit(c)
+		n[c]++
+	}
+	for i := len(order) - 1; i >= 0; i-- {
+		for _, ch := range order[i].Children {
+			if ch.Context != nil {
+				n[ch.Context] = min(n[ch.Context]+n[order[i]], math.MaxInt32)
+			}
+		}
+	}
+	return n
+}
