@@ -21,40 +21,48 @@ func (d *Device) Eval(vgs, vds, vbs float64) Point {
 	}
 	p.VGS, p.VDS, p.VBS = gs, ds, bs
 
-	outer := d.core.eval(gs, ds, bs)
-	inner, id := outer, outer.id
+	c := d.core.eval(gs, ds, bs)
+	p.Vth, p.Vdsat, p.N = c.vth, c.vdsat, c.n
+	p.Vov = gs - c.vth
 	p.Internal = Inner{VGS: gs, VDS: ds, VBS: bs}
 	if d.resists {
-		id, inner = d.throughAccess(gs, ds, bs, rd, rs, &p.Internal)
+		d.throughAccess(&c, &p.Internal, rd, rs)
 	}
-	p.Internal.Vth, p.Internal.Vdsat = inner.vth, inner.vdsat
-	if !id.finite() {
-		id, p.Failed = dual{}, true
+	p.Internal.Vth, p.Internal.Vdsat = c.vth, c.vdsat
+	if !c.id.finite() {
+		c.id, p.Failed = dual{}, true
 	}
-	id = id.times(d.m)
-	p.wire(d.s, id)
-	p.describe(d.m, id, outer, inner)
+	c.id = c.id.times(d.m)
+	p.wire(d.s, c.id)
+	p.describe(d.m, &c)
 	return p
 }
 
 // limited keeps voltages within biasLimit; a NaN becomes zero.
 func limited(v float64) float64 {
-	if v != v {
+	switch {
+	case v != v:
 		return 0
+	case v > biasLimit:
+		return biasLimit
+	case v < -biasLimit:
+		return -biasLimit
 	}
-	return math.Max(-biasLimit, math.Min(biasLimit, v))
+	return v
 }
 
-// throughAccess evaluates behind the access resistances.
-func (d *Device) throughAccess(vgs, vds, vbs float64, rd, rs access, in *Inner) (dual, channel) {
-	gs, ds, bs := bias(vgs, vds, vbs)
+// throughAccess replaces the channel at the outer voltages, in, by the one
+// behind the access resistances; its current is that of the outer terminals.
+func (d *Device) throughAccess(c *channel, in *Inner, rd, rs access) {
+	gs, ds, bs := bias(in.VGS, in.VDS, in.VBS)
 	rsv := rs.at(gs, bs)
 	rdv := rd.at(gs.sub(ds), bs.sub(ds))
-	id, inner := solve(d.core, vgs, vds, vbs, rdv, rsv)
+	id, inner := solve(d.core, in.VGS, in.VDS, in.VBS, rdv, rsv)
 	in.VGS -= id.v * rsv.v
 	in.VBS -= id.v * rsv.v
-	in.VDS = math.Max(0, vds-id.v*(rsv.v+rdv.v))
-	return id, inner
+	in.VDS = math.Max(0, in.VDS-id.v*(rsv.v+rdv.v))
+	*c = inner
+	c.id = id
 }
 
 // wire turns the current and its derivatives back to the terminals as wired.
@@ -67,30 +75,28 @@ func (p *Point) wire(s float64, id dual) {
 	p.Id, p.Gm, p.Gds, p.Gmb = s*id.v, id.g, id.d, id.b
 }
 
-// describe fills the second group of a Point, in the conducting direction.
-func (p *Point) describe(m float64, id dual, outer, inner channel) {
-	p.ID = math.Abs(id.v)
-	p.Vth, p.Vdsat, p.N = outer.vth, outer.vdsat, outer.n
-	p.Vov = p.VGS - p.Vth
-	p.K = m * inner.k
-	p.VelSat = inner.velocity
-	p.IC = inner.ic
+// describe fills the rest of the second group of a Point, in the conducting
+// direction.
+func (p *Point) describe(m float64, c *channel) {
+	p.ID = math.Abs(c.id.v)
+	p.K = m * c.k
+	p.VelSat = c.velocity
+	p.IC = c.ic
 	if p.IC != p.IC {
-		p.IC = Inversion((p.Internal.VGS - inner.vth) / (inner.n * p.Vt))
+		p.IC = Inversion((p.Internal.VGS - c.vth) / (c.n * p.Vt))
 	}
-	p.Rds = 1 / id.d
-	if id.d == 0 {
-		p.Rds = math.Inf(1)
+	p.Rds, p.Ron0 = math.Inf(1), math.Inf(1)
+	if c.id.d != 0 {
+		p.Rds = 1 / c.id.d
+	}
+	if p.Vov > 0 && p.K > 0 {
+		p.Ron0 = 1 / (p.K * p.Vov)
 	}
 	p.Ron = p.VDS / p.ID
 	if p.VDS == 0 {
 		p.Ron = p.Rds
 	}
-	p.Ron0 = math.Inf(1)
-	if p.Vov > 0 && p.K > 0 {
-		p.Ron0 = 1 / (p.K * p.Vov)
-	}
-	p.Slope = id.d * p.VDS / p.ID
+	p.Slope = c.id.d * p.VDS / p.ID
 	if p.ID == 0 {
 		p.Slope = math.NaN()
 	}

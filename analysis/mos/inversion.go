@@ -21,32 +21,46 @@ func inversionRoot(i float64) float64 {
 	return i / (math.Sqrt(i+0.25) + 0.5)
 }
 
-// inversionCharge solves 2q + ln q = v. Below −40 q equals e^v to double
-// precision. In weak inversion Newton runs on ln q, where the equation is nearly
-// a straight line; above, Halley's third-order step runs on q.
+// inversionCharge solves 2q + ln q = v to the last digits. Below −40 q equals e^v
+// to double precision.
 func inversionCharge(v float64) float64 {
 	switch {
 	case !(v > -40):
 		return math.Exp(math.Max(v, -700))
 	case v < 1:
 		return weakCharge(v)
+	case v < 12:
+		return moderateCharge(v)
 	case v > 1e15:
 		return v / 2
 	}
 	q := (v - roughLog(v/2+0.3)) / 2
 	q = (v - roughLog(q)) / 2
+	// With q(1 + u) put in, (2q + 1)u = v - 2q - ln q + u²/2 - u³/3 + ..., where u
+	// is below 1e-3: one logarithm is enough.
+	a := 1 / (2*q + 1)
+	r := (v - 2*q - math.Log(q)) * a
+	u := r + a*r*r*(0.5-r/3)
+	u = r + a*u*u*(0.5-u*(1.0/3-u*0.25))
+	return q + q*u
+}
+
+// moderateCharge takes Halley's third-order steps on q.
+func moderateCharge(v float64) float64 {
+	q := (v - roughLog(v/2+0.3)) / 2
 	for range 10 {
-		g := 2*q + math.Log(q) - v
-		newton := g * q / (2*q + 1)
+		newton := (2*q + math.Log(q) - v) * q / (2*q + 1)
 		step := newton / (1 + newton/(2*q*(2*q+1)))
 		q -= step
-		if s := math.Abs(step / q); s*s*s < 1e-16 {
+		if math.Abs(step) < 1e-6*q {
 			break
 		}
 	}
 	return q
 }
 
+// weakCharge takes Newton steps on ln q, where the equation is nearly a straight
+// line.
 func weakCharge(v float64) float64 {
 	e := 2 * math.Exp(v)
 	y := v - e/(1+e)
@@ -61,12 +75,13 @@ func weakCharge(v float64) float64 {
 	return math.Exp(y)
 }
 
-// roughLog is ln x to 1e-4, for a first guess without the cost of a logarithm.
+// roughLog is ln x of a normal number to 5e-4, for a first guess without the
+// cost of a logarithm: the exponent, and a cubic in the mantissa.
 func roughLog(x float64) float64 {
-	const c = math.Sqrt2 / 2
-	m, e := math.Frexp(x)
-	z := (m - c) / (m + c)
-	return float64(e)*math.Ln2 - math.Ln2/2 + 2*z + z*z*z*2/3
+	bits := math.Float64bits(x)
+	m := math.Float64frombits(bits&(1<<52-1) | 1023<<52)
+	e := float64(int(bits>>52) - 1023)
+	return e*math.Ln2 + (-1.4906 + m*(2.1103+m*(-0.7289+m*0.1097)))
 }
 
 // inversion is Inversion over a dual: di/dv = q, from dv/dq = 2 + 1/q.
