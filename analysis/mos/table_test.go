@@ -13,7 +13,7 @@ const (
 )
 
 func TestTables(t *testing.T) {
-	for _, file := range []string{"level1.csv", "swap.csv"} {
+	for _, file := range []string{"level1.csv", "level2.csv", "level3.csv", "swap.csv"} {
 		t.Run(file, func(t *testing.T) { checkTable(t, file) })
 	}
 }
@@ -26,7 +26,7 @@ func checkTable(t *testing.T, file string) {
 	}
 	for i, r := range rows {
 		c := card(t, r["card"])
-		if c.Params["level"] != 1 {
+		if c.Params["level"] > 3 {
 			continue
 		}
 		g := sized(r.num(t, "W"), r.num(t, "L"))
