@@ -68,6 +68,13 @@ func (r *reading) openSubckt(w *walk, i int, st *parser.Subckt) {
 	s.Name = parser.Fold(st.Name.Text)
 	s.Subckt = st
 	s.Ports = st.Ports
+	if n := len(st.Optional); n > 0 {
+		s.Ports = append([]parser.Word(nil), st.Ports...)
+		for _, p := range st.Optional {
+			s.Ports = append(s.Ports, p.Name)
+		}
+		s.Optional = n
+	}
 	s.Place = place(w.doc, i, st.Name.Span())
 	s.Branch = r.branch
 	if !r.push(w, &block{card: i, subckt: s}, st.Name.Text) {

@@ -71,23 +71,70 @@ func (b *builder) newNet(w parser.Word, at Place) NetID {
 }
 
 // nodes gives the nets of an element's terminals.
-func (b *builder) nodes(e *ElementAt) []NetID {
-	n := len(e.Nodes)
+func (b *builder) nodes(e *ElementAt) []NetID { return b.netsOf(e, e.Nodes) }
+
+func (b *builder) netsOf(e *ElementAt, nodes []parser.Word) []NetID {
+	n := len(nodes)
 	if cap(b.ids)-len(b.ids) < n {
 		b.ids = make([]NetID, 0, max(n, 4*blockSize))
 	}
 	from := len(b.ids)
-	for _, w := range e.Nodes {
-		id, ok := b.cell.nets[w.Text]
-		if !ok {
-			id, ok = b.cell.nets[parser.Fold(w.Text)]
-		}
-		if !ok {
-			id = b.newNet(w, place(e.Place.Doc, e.Place.Card, w.Span()))
-		}
-		b.ids = append(b.ids, id)
+	for _, w := range nodes {
+		b.ids = append(b.ids, b.net(w, e.Place.Doc, e.Place.Card))
 	}
 	return b.ids[from:len(b.ids):len(b.ids)]
+}
+
+func (b *builder) net(w parser.Word, doc *Document, card int) NetID {
+	if id, ok := b.cell.nets[w.Text]; ok {
+		return id
+	}
+	if id, ok := b.cell.nets[parser.Fold(w.Text)]; ok {
+		return id
+	}
+	return b.newNet(w, place(doc, card, w.Span()))
+}
+
+// connections gives the nets of an instance in the order of its subckt's ports:
+// as listed, or by name, with the defaults of optional ports left out.
+func (b *builder) connections(e *ElementAt, def *Scope) []NetID {
+	nodes := e.Nodes
+	if len(e.Pins) > 0 {
+		nodes = named(e, def)
+	}
+	nets := b.netsOf(e, nodes)
+	if def == nil || def.Optional == 0 {
+		return nets
+	}
+	required := len(def.Ports) - def.Optional
+	for k := len(nets); k >= required && k < len(def.Ports); k++ {
+		w := def.Subckt.Optional[k-required].Value.Word
+		nets = append(nets, b.net(w, def.Place.Doc, def.Place.Card))
+	}
+	return nets
+}
+
+// named lists the nodes of an instance that connects ports by name. It stops
+// before a port that has none, as a list that is too short does.
+func named(e *ElementAt, def *Scope) []parser.Word {
+	given := map[string]parser.Word{}
+	var nodes []parser.Word
+	for _, p := range e.Pins {
+		given[parser.Fold(p.Name.Text)] = p.Value.Word
+		nodes = append(nodes, p.Value.Word)
+	}
+	if def == nil {
+		return nodes
+	}
+	nodes = nodes[:0]
+	for _, port := range def.Ports {
+		w, ok := given[parser.Fold(port.Text)]
+		if !ok {
+			break
+		}
+		nodes = append(nodes, w)
+	}
+	return nodes
 }
 
 // element adds a device or an instance.
@@ -104,11 +151,18 @@ func (b *builder) element(e *ElementAt) {
 // device, and any other letter that names a subckt is an instance of it: what
 // counts is what exists.
 func (b *builder) resolve(e *ElementAt) (*Model, *Scope) {
-	if e.Model.IsZero() {
-		return nil, nil
-	}
-	name := parser.Fold(e.Model.Text)
 	env := b.cell.Env
+	name := parser.Fold(e.Model.Text)
+	if e.Model.IsZero() {
+		// `R1 a b rx` may name a parameter or a model: the former goes first.
+		if len(e.Values) != 1 || e.Values[0].Form != parser.NameValue {
+			return nil, nil
+		}
+		name = parser.Fold(e.Values[0].Text)
+		if env.has(name) {
+			return nil, nil
+		}
+	}
 	if e.Letter == 'x' {
 		if def := env.subckt(name); def != nil {
 			return nil, def
@@ -129,7 +183,7 @@ func (b *builder) instance(e *ElementAt, def *Scope) {
 	x := &b.instances[len(b.instances)-1]
 	*x = Instance{
 		Name: parser.Fold(e.Name.Text), Spelt: e.Name.Text, Elem: e.Element, Place: e.Place,
-		Nets: b.nodes(e), Def: def, Params: b.params(e, b.passed), M: Value{V: 1},
+		Nets: b.connections(e, def), Def: def, Params: b.params(e, b.passed), M: Value{V: 1},
 	}
 	b.cell.Instances = append(b.cell.Instances, x)
 	if m, ok := x.Params["m"]; ok && (def == nil || !def.declares("m")) {
@@ -199,8 +253,9 @@ func (b *builder) params(e *ElementAt, known map[string]map[string]Value) map[st
 	}
 	got := make(map[string]Value, len(e.Params))
 	for k := range e.Params {
-		p := &e.Params[k]
-		got[parser.Fold(p.Name.Text)] = b.value(p.Value, e.Place)
+		if p := &e.Params[k]; !p.Name.IsZero() {
+			got[parser.Fold(p.Name.Text)] = b.value(p.Value, e.Place)
+		}
 	}
 	known[text] = got
 	return got
@@ -233,7 +288,11 @@ func paramText(at Place, e *parser.Element) string {
 	from, to := int32(len(text)), int32(0)
 	for k := range e.Params {
 		p := &e.Params[k]
-		from = min(from, p.Name.Start)
+		if p.Name.IsZero() { // behind the comma of a list
+			from = min(from, p.Value.Start)
+		} else {
+			from = min(from, p.Name.Start)
+		}
 		to = max(to, p.Name.Span().End, p.Value.Span().End)
 	}
 	if from < 0 || from > to || int(to) > len(text) {

@@ -84,7 +84,8 @@ type Scope struct {
 	Subckt   *parser.Subckt // nil at the top level
 	Place    Place          // of the `.subckt` name
 	Parent   *Scope
-	Ports    []parser.Word
+	Ports    []parser.Word // the optional ones last
+	Optional int           // how many of Ports a caller may leave out
 	Elements []ElementAt
 	Notes    []NoteAt
 	Models   map[string][]*ModelDef // by folded name; more than one where sections or duplicates exist
@@ -239,7 +240,7 @@ type Device struct {
 	Place  Place
 	Nets   []NetID
 	Model  *Model           // nil if the form has none or it is undefined
-	Value  Value            // resistance, capacitance, DC of a source, gain
+	Value  Value            // resistance, capacitance, DC of a source, gain, area of a junction
 	Params map[string]Value // by folded name; equal cards of a cell share one map
 	Scale  float64          // `.option scale`: multiplies bare geometry; 1 by default
 }

@@ -75,9 +75,11 @@ var valueNames = map[Kind][]string{
 	CCCS:      {"gain"},
 	CCVS:      {"gain"},
 	Coupling:  {"k"},
+	Diode:     {"area"},
+	Bipolar:   {"area"},
 }
 
-// mainValue is the resistance, capacitance, DC value or gain that the card states.
+// mainValue is the resistance, capacitance, DC value, gain or area that the card states.
 func (b *builder) mainValue(e *ElementAt, d *Device) Value {
 	names, ok := valueNames[d.Kind]
 	if !ok {
@@ -88,7 +90,7 @@ func (b *builder) mainValue(e *ElementAt, d *Device) Value {
 			return v
 		}
 	}
-	if e.Source == nil && len(e.Values) > 0 && (len(e.Values) == 1 || d.Kind == Resistor || d.Kind == Capacitor || d.Kind == Inductor) {
+	if e.Source == nil && len(e.Values) > 0 && b.isValue(e, d) {
 		return b.value(e.Values[0], e.Place)
 	}
 	for _, name := range names {
@@ -106,6 +108,18 @@ func (b *builder) mainValue(e *ElementAt, d *Device) Value {
 		}
 	}
 	return Value{}
+}
+
+// isValue says whether the first positional value of a card is its main value.
+func (b *builder) isValue(e *ElementAt, d *Device) bool {
+	v := e.Values[0]
+	switch d.Kind {
+	case Resistor, Capacitor, Inductor: // further values: temperature coefficients, polynomials
+		return v.Form != parser.NameValue || d.Model == nil
+	case Diode, Bipolar: // `off` may stand there too
+		return v.Form != parser.NameValue || b.cell.Env.has(parser.Fold(v.Text))
+	}
+	return len(e.Values) == 1
 }
 
 // sourceValue is the DC value of a source, or what its waveform begins with:

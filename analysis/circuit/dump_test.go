@@ -26,6 +26,11 @@ func dump(d *circuit.Design) string {
 	for _, c := range d.Alone {
 		dumpCell(&b, c, "alone", seen)
 	}
+	for _, doc := range d.Docs {
+		for _, e := range doc.File.Errors() {
+			fmt.Fprintf(&b, "unread %s: %s\n", where(circuit.Place{Doc: doc, Span: e.Span}), e.Message)
+		}
+	}
 	for _, p := range d.Problems {
 		fmt.Fprintf(&b, "problem %s %s: %s\n", kindWords[p.Kind], where(p.Place), p.Message)
 	}
@@ -148,11 +153,32 @@ func dumpCell(b *strings.Builder, c *circuit.Cell, word string, seen map[*circui
 	for _, x := range c.Instances {
 		dumpInstance(b, c, x)
 	}
+	dumpWrapper(b, c)
 	for _, x := range c.Instances {
 		if x.Cell != nil {
 			dumpCell(b, x.Cell, "cell", seen)
 		}
 	}
+}
+
+// dumpWrapper says which transistor the cell stands for.
+func dumpWrapper(b *strings.Builder, c *circuit.Cell) {
+	w := c.Wrapper()
+	if w == nil {
+		return
+	}
+	b.WriteString("  stands for ")
+	for _, x := range w.Path {
+		b.WriteString(x.Name + ".")
+	}
+	b.WriteString(w.Device.Name)
+	for t, word := range []string{"drain", "gate", "source", "bulk"} {
+		fmt.Fprintf(b, " %s=%d", word, w.Ports[t])
+		for _, r := range w.Series[t] {
+			fmt.Fprintf(b, "+%s", r.Name)
+		}
+	}
+	b.WriteByte('\n')
 }
 
 func dumpDevice(b *strings.Builder, c *circuit.Cell, d *circuit.Device) {

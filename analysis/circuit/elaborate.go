@@ -81,6 +81,9 @@ func (el *elaborator) instantiate(s *Scope, around *Env, args map[string]Value) 
 	el.cells[key] = c
 	first := !el.made[s]
 	el.made[s] = true
+	for _, err := range env.failed {
+		el.report(s, err)
+	}
 	if first {
 		el.ownParams(c)
 	}

@@ -15,6 +15,7 @@ type Env struct {
 	args       map[string]Value // what the instance gives, by folded name
 	inactive   map[*Branch]bool // the conditional arms that this cell does not choose
 	conditions *conditions
+	failed     []error // conditional tests that did not evaluate
 
 	mu     sync.Mutex // guards the two below; never held while evaluating
 	known  map[string]Value
@@ -42,7 +43,11 @@ func newEnv(s *Scope, parent *Env, args map[string]Value, c *conditions) *Env {
 		if !e.active(c.Within) {
 			continue
 		}
-		if k, _ := chooseArm(e, c.Arms); k >= 0 {
+		k, failed := chooseArm(e, c.Arms)
+		if failed.Err != nil {
+			e.failed = append(e.failed, failed.Err)
+		}
+		if k >= 0 {
 			delete(e.inactive, c.Arms[k])
 			clear(e.known)
 		}
@@ -105,6 +110,16 @@ func (e *Env) Def(name string) *ParamDef {
 		}
 	}
 	return nil
+}
+
+// has says whether a parameter of the folded name exists, without evaluating it.
+func (e *Env) has(name string) bool {
+	for ; e != nil; e = e.parent {
+		if _, ok := e.args[name]; ok || e.last(name, -1) >= 0 {
+			return true
+		}
+	}
+	return false
 }
 
 // last gives the index of the last active definition of a parameter before

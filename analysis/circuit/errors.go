@@ -18,8 +18,9 @@ const (
 	Domain                      // outside a function's domain, or beyond a float64
 	NotNumber                   // a string, a keyword, nothing
 	Unsupported                 // depends on what only a simulation knows
-	Malformed                   // not an expression, or a wrong number of arguments
+	Malformed                   // a wrong number of arguments
 	Excessive                   // beyond the caps on depth and work
+	Unreadable                  // not an expression: the card's own errors say why
 )
 
 // EvalError says why an expression has no value, and where the cause stands.

@@ -45,7 +45,7 @@ func (ev *evaluation) value(v parser.Value) Value {
 		if perr != nil {
 			message, sp = perr.Message, perr.Span
 		}
-		return Value{Set: true, Err: &EvalError{Kind: Malformed, Name: v.Text, Span: sp, Message: message}}
+		return Value{Set: true, Err: &EvalError{Kind: Unreadable, Name: v.Text, Span: sp, Message: message}}
 	}
 	f, err := ev.eval(x)
 	return Value{V: f, Set: true, Err: err}

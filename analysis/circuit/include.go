@@ -94,6 +94,13 @@ func (r *reading) include(w *walk, card int, path parser.Word, wanted parser.Wor
 		r.problems.add(TooDeep, at, path.Text, "file %q is not read: more than %d files include each other in a row", path.Text, maxIncludes)
 		return
 	}
+	if r.reads++; r.reads > maxReads {
+		if !r.full {
+			r.problems.add(TooDeep, at, path.Text, "the design includes more than %d files: the rest is left out", maxReads)
+		}
+		r.full, r.scope.Open = true, true
+		return
+	}
 	in := &walk{doc: doc, section: name, from: 0, to: doc.File.Len()}
 	if name != "" {
 		sec, ok := r.sectionsOf(doc.File).find(name)

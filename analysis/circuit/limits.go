@@ -4,6 +4,8 @@ package circuit
 // above what people write.
 const (
 	maxIncludes   = 64       // files open inside each other
+	maxReads      = 1 << 16  // files read, one included twice counting twice
+	maxBases      = 16       // models that build on the next
 	maxBlocks     = 64       // .subckt and .if open inside each other, a file
 	maxCards      = 20 << 20 // cards read, a file included twice counting twice
 	maxHierarchy  = 128      // instances inside each other

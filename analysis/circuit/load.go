@@ -31,6 +31,7 @@ type reading struct {
 	settings  []setting
 	undefined map[string]bool // names reported
 	cards     int
+	reads     int
 	scale     float64
 	full      bool // a cap was met
 }
@@ -63,7 +64,7 @@ func Load(ctx context.Context, reader Reader, root string, options Options) *Des
 		}
 		r.decide(round == maxRounds)
 	}
-	r.design.Top.Walk((*Scope).sortBins)
+	r.design.Top.Walk((*Scope).finish)
 	r.applySettings()
 	r.elaborate()
 	r.design.Problems = r.problems.list
@@ -175,11 +176,11 @@ func (r *reading) statement(w *walk, i int, c *parser.Card) {
 		})
 	case *parser.ParamDefs:
 		r.addParams(w, i, st.Params)
+		for _, f := range st.Funcs {
+			r.addFunc(w, i, f)
+		}
 	case *parser.FuncDef:
-		s.addParam(&ParamDef{
-			Name: parser.Fold(st.Name.Text), Value: st.Body, Func: st,
-			Place: place(w.doc, i, st.Name.Span()), Branch: r.branch,
-		})
+		r.addFunc(w, i, st)
 	case *parser.Subckt:
 		r.openSubckt(w, i, st)
 	case *parser.Ends:
@@ -211,9 +212,19 @@ func (r *reading) statement(w *walk, i int, c *parser.Card) {
 func (r *reading) addParams(w *walk, i int, params []parser.Param) {
 	for k := range params {
 		p := &params[k]
+		if p.Name.IsZero() {
+			continue // behind the comma of a list
+		}
 		r.scope.addParam(&ParamDef{
 			Name: parser.Fold(p.Name.Text), Value: p.Value,
 			Place: place(w.doc, i, p.Name.Span()), Branch: r.branch,
 		})
 	}
+}
+
+func (r *reading) addFunc(w *walk, i int, f *parser.FuncDef) {
+	r.scope.addParam(&ParamDef{
+		Name: parser.Fold(f.Name.Text), Value: f.Body, Func: f,
+		Place: place(w.doc, i, f.Name.Span()), Branch: r.branch,
+	})
 }

@@ -91,12 +91,56 @@ func (e *Env) ModelParam(def *ModelDef, name string) Value {
 	if at == nil {
 		return Value{}
 	}
-	for k := len(def.Params) - 1; k >= 0; k-- {
-		if p := &def.Params[k]; parser.Fold(p.Name.Text) == name {
-			return at.modelValue(def, p)
+	for _, card := range at.cards(def) {
+		params := card.def.Params
+		for k := len(params) - 1; k >= 0; k-- {
+			if p := &params[k]; !p.Name.IsZero() && parser.Fold(p.Name.Text) == name {
+				return card.env.modelValue(card.def, p)
+			}
 		}
 	}
 	return Value{}
+}
+
+// modelCard is a card with the environment in which it stands.
+type modelCard struct {
+	env *Env
+	def *ModelDef
+}
+
+// cards lists a card and, if it says `ako:`, those that it builds on in turn.
+func (e *Env) cards(def *ModelDef) []modelCard {
+	list := []modelCard{{e, def}}
+	for len(list) < maxBases {
+		base := def.base()
+		if base == nil {
+			break
+		}
+		at := e.of(base.Scope)
+		if at == nil {
+			break
+		}
+		e, def = at, base
+		list = append(list, modelCard{e, def})
+	}
+	return list
+}
+
+// base is the model that a card builds on: the first of that name that is not
+// the card itself; nil if it says none or there is none.
+func (m *ModelDef) base() *ModelDef {
+	if m.Base.IsZero() {
+		return nil
+	}
+	name := parser.Fold(m.Base.Text)
+	for s := m.Scope; s != nil; s = s.Parent {
+		for _, def := range s.Models[name] {
+			if def != m {
+				return def
+			}
+		}
+	}
+	return nil
 }
 
 func (e *Env) modelValue(def *ModelDef, p *parser.Param) Value {
@@ -121,9 +165,14 @@ func (e *Env) evaluated(def *ModelDef) *Model {
 		return m
 	}
 	m = &Model{Def: def, Params: make(map[string]Value, len(def.Params))}
-	for k := range def.Params {
-		p := &def.Params[k]
-		m.Params[parser.Fold(p.Name.Text)] = e.modelValue(def, p)
+	cards := e.cards(def)
+	for c := len(cards) - 1; c >= 0; c-- { // what the card itself states comes last
+		card := cards[c]
+		for k := range card.def.Params {
+			if p := &card.def.Params[k]; !p.Name.IsZero() {
+				m.Params[parser.Fold(p.Name.Text)] = card.env.modelValue(card.def, p)
+			}
+		}
 	}
 	return e.keep(def, false, m)
 }

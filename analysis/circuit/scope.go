@@ -120,9 +120,17 @@ func (s *Scope) addSubckt(c *Scope) {
 	s.Children = append(s.Children, c)
 }
 
-// sortBins puts every bin list in the order of its numbers, stably, so that the
-// order does not depend on that of the files.
-func (s *Scope) sortBins() {
+// finish completes what takes the whole text: bins go in the order of their
+// numbers, whatever that of the files, and a model that builds on another takes
+// its type.
+func (s *Scope) finish() {
+	for _, m := range s.models {
+		for at, steps := m, 0; m.Type == "" && at != nil && steps < maxBases; steps++ {
+			if at = at.base(); at != nil {
+				m.Type = at.Type
+			}
+		}
+	}
 	for _, defs := range s.bins {
 		sort.SliceStable(defs, func(a, b int) bool {
 			_, na, _ := binName(defs[a].Name)
