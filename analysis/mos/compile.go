@@ -20,6 +20,8 @@ type channel struct {
 	velocity float64 // overdrive / (Esat·Leff), NaN where unknown
 	ic       float64 // inversion coefficient, NaN where only vth and n tell it
 
+	// Internals of EKV, for comparison with its published tables.
+	vp, ir float64
 	// Internals of the BSIM family, for comparison with its published tables.
 	vgsteff, abulk, ueff, rds, coxeff float64
 }

@@ -12,6 +12,7 @@ var families = []family{
 	{label: "level 1", levels: []int{1}, names: classicNames, compile: compileLevel1},
 	{label: "level 2", levels: []int{2}, names: classicNames, compile: compileLevel2},
 	{label: "level 3", levels: []int{3}, names: classicNames, compile: compileLevel3},
+	{label: "EKV 2.6", levels: []int{44, 55}, names: ekv26Names, compile: compileEKV26},
 }
 
 // vocabulary is the set of parameter names of a `.model` card.
