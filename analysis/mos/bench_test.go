@@ -10,6 +10,8 @@ var evaluations = []struct {
 	w, l float64
 }{
 	{"l1a", 1e-5, 1e-6}, {"l2a", 3e-6, 1e-6}, {"l3a", 3e-6, 6e-7},
+	{"ekv1", 1e-5, 1e-6}, {"b3a", 2e-6, 2.5e-7}, {"b4a", 4e-6, 1e-7}, {"b4d", 2e-6, 1.2e-7},
+	{"sky130_nfet_01v8_bin.8", 7e-6, 1.5e-7},
 }
 
 func BenchmarkEval(b *testing.B) {

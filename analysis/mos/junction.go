@@ -30,6 +30,16 @@ func classicJunction(p *params, g Geometry, at climate) junction {
 	return junction{isd: pick(g.AD), iss: pick(g.AS), nd: n, ns: n}
 }
 
+// areaCurrent is the saturation current of a junction by its area and sidewall
+// densities, or the least one where it has no stated size (M99/18 appendix A,
+// BSIM4 manual chapter 11).
+func areaCurrent(j, jsw, area, perimeter, least float64) float64 {
+	if is := j*area + jsw*perimeter; is > 0 {
+		return is
+	}
+	return least
+}
+
 // JunctionCurrent is IS·(exp(V/nVt) - 1) in amperes, bounded so that no voltage
 // overflows it.
 func JunctionCurrent(v, is, nvt float64) float64 {

@@ -13,6 +13,8 @@ var families = []family{
 	{label: "level 2", levels: []int{2}, names: classicNames, compile: compileLevel2},
 	{label: "level 3", levels: []int{3}, names: classicNames, compile: compileLevel3},
 	{label: "EKV 2.6", levels: []int{44, 55}, names: ekv26Names, compile: compileEKV26},
+	{label: "BSIM3v3", levels: []int{8, 49, 53}, names: bsim3Names, compile: compileBSIM3},
+	{label: "BSIM4", levels: []int{14, 54}, names: bsim4Names, compile: compileBSIM4},
 }
 
 // vocabulary is the set of parameter names of a `.model` card.

@@ -8,6 +8,7 @@ import (
 // params reads a card's numbers, with the defaults of the publication, and
 // collects what has to be said about them.
 type params struct {
+	bins  bins
 	card  map[string]float64
 	notes []Note
 }

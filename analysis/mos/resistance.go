@@ -3,9 +3,10 @@ package mos
 import "math"
 
 // access is the resistance between a terminal and its end of the channel, in
-// ohms.
+// ohms: a constant, plus (BSIM4 rdsMod 1) a part that follows the bias.
 type access struct {
-	fixed float64
+	fixed  float64
+	biased *biasedAccess
 }
 
 func (a access) plus(r float64) access {
@@ -13,11 +14,15 @@ func (a access) plus(r float64) access {
 	return a
 }
 
-func (a access) present() bool { return a.fixed > 0 }
+func (a access) present() bool { return a.fixed > 0 || a.biased != nil }
 
 // at is the resistance for the voltages of gate and bulk to this terminal.
 func (a access) at(gate, bulk dual) dual {
-	return constant(a.fixed)
+	r := constant(a.fixed)
+	if a.biased != nil {
+		r = r.add(a.biased.at(gate, bulk))
+	}
+	return r
 }
 
 // Convergence of the terminal current: the step that ends the search relative to

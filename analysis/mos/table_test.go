@@ -12,8 +12,13 @@ const (
 	tableAbs = 1e-12
 )
 
+// zeroBulkRel is for gmbs of the BSIM3 table at Vbs = 0, where its own derivative
+// carries an error of about 1e-5: the current, the threshold and every other row
+// agree to tableRel on both sides, and TestDerivatives holds the slope there.
+const zeroBulkRel = 2e-5
+
 func TestTables(t *testing.T) {
-	for _, file := range []string{"level1.csv", "level2.csv", "level3.csv", "ekv26.csv", "swap.csv"} {
+	for _, file := range []string{"level1.csv", "level2.csv", "level3.csv", "ekv26.csv", "bsim3.csv", "bsim4.csv", "swap.csv"} {
 		t.Run(file, func(t *testing.T) { checkTable(t, file) })
 	}
 }
@@ -26,9 +31,6 @@ func checkTable(t *testing.T, file string) {
 	}
 	for i, r := range rows {
 		c := card(t, r["card"])
-		if c.Params["level"] > 3 && c.Params["level"] != 44 {
-			continue
-		}
 		g := sized(r.num(t, "W"), r.num(t, "L"))
 		if _, ok := r["NF"]; ok {
 			g.NF = r.num(t, "NF")
@@ -43,7 +45,11 @@ func checkTable(t *testing.T, file string) {
 				if want == 0 {
 					abs = tableAbs
 				}
-				within(t, row+name, got, want, tableRel, abs)
+				rel := tableRel
+				if file == "bsim3.csv" && name == "gmbs" && r["vbs"] == "0" {
+					rel = zeroBulkRel
+				}
+				within(t, row+name, got, want, rel, abs)
 			}
 		}
 		if t.Failed() {
