@@ -156,7 +156,9 @@ func (r *reader) wordsDirective(kind directiveKind) (Stmt, *Error) {
 	}
 	t := &Temp{}
 	for _, f := range g.Fields {
-		t.Values = append(t.Values, valueOfToken(f))
+		if kindOf(f) != commaToken {
+			t.Values = append(t.Values, valueOfToken(f))
+		}
 	}
 	if len(t.Values) == 0 {
 		return nil, &Error{Span: r.spanOf(r.tokens[0]), Message: fmt.Sprintf("%q states no temperature", word)}
@@ -198,8 +200,11 @@ func (r *reader) options() (Stmt, *Error) {
 		switch {
 		case i.Param != nil:
 			v := valueOfToken(i.Param.Value)
-			if v.Form == ExprValue && kindOf(i.Param.Value) == wordToken {
+			switch k := kindOf(i.Param.Value); {
+			case v.Form == ExprValue && k == wordToken:
 				v.Form = NameValue // a path or a list, not arithmetic
+			case k == quoteToken:
+				v.Form = StringValue
 			}
 			o.Params = append(o.Params, Param{Name: wordOf(i.Param.Name), Value: v})
 		case i.Mark.Type == 0:

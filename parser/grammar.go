@@ -139,13 +139,17 @@ func wordOf(t lexer.Token) Word {
 	return Word{Text: t.Value, Start: int32(t.Pos.Offset)}
 }
 
+// wordsOf are the words of a captured list; the commas between them were captured
+// too, for participle keeps only the last of repeated captures.
 func wordsOf(ts []lexer.Token) []Word {
 	if len(ts) == 0 {
 		return nil
 	}
-	ws := make([]Word, len(ts))
-	for i, t := range ts {
-		ws[i] = wordOf(t)
+	ws := make([]Word, 0, len(ts))
+	for _, t := range ts {
+		if kindOf(t) != commaToken {
+			ws = append(ws, wordOf(t))
+		}
 	}
 	return ws
 }

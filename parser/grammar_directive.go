@@ -17,7 +17,7 @@ type defG struct {
 // funcDefG is `f(a,b)='…'`.
 type funcDefG struct {
 	Name lexer.Token   `parser:"@Word '('"`
-	Args []lexer.Token `parser:"( @Word ( ',' @Word )* )? ')' '='"`
+	Args []lexer.Token `parser:"@( Word ( ',' Word )* )? ')' '='"`
 	Body lexer.Token   `parser:"@(Word | Quote | Brace | Paren | String | Bare)"`
 }
 
@@ -26,8 +26,8 @@ type funcDefG struct {
 type funcG struct {
 	Word lexer.Token   `parser:"@Word"`
 	Name lexer.Token   `parser:"@Word '('"`
-	Args []lexer.Token `parser:"( @Word ( ',' @Word )* )? ')' '='?"`
-	Body []lexer.Token `parser:"@(Word | Key | Quote | Brace | Paren | String | Bare | Open | Close | Comma | Assign)+"`
+	Args []lexer.Token `parser:"@( Word ( ',' Word )* )? ')' '='?"`
+	Body []lexer.Token `parser:"@( ( Word | Key | Quote | Brace | Paren | String | Bare | Open | Close | Comma | Assign )+ )"`
 }
 
 // subcktG is `.subckt name ports params`.
@@ -48,7 +48,7 @@ type modelG struct {
 // wordsG is a directive that takes words: `.global`, `.ends`, `.temp`.
 type wordsG struct {
 	Word   lexer.Token   `parser:"@Word"`
-	Fields []lexer.Token `parser:"( @(Word | Quote | Brace | String) | Comma )*"`
+	Fields []lexer.Token `parser:"@( ( Word | Quote | Brace | String | Comma )+ )?"`
 }
 
 // optionsG is `.option key[=value] …`.

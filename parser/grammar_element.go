@@ -7,9 +7,9 @@ import "github.com/alecthomas/participle/v2/lexer"
 
 // paramG is `name=value`, or `name=a,b,c`.
 type paramG struct {
-	Name  lexer.Token   `parser:"@(Key | Keyword) '='"`
-	Value lexer.Token   `parser:"@(Word | Quote | Brace | Paren | String | Bare | Field | Keyword)"`
-	More  []lexer.Token `parser:"( ',' @(Word | Quote | Brace | String) )*"`
+	Name  lexer.Token   `parser:"@Key '='"`
+	Value lexer.Token   `parser:"@(Word | Quote | Brace | Paren | String | Bare | Field)"`
+	More  []lexer.Token `parser:"@( ( ',' ( Word | Quote | Brace | String ) )+ )?"`
 }
 
 // itemG is what may follow an element's name: a parameter, a field, or the
@@ -113,7 +113,9 @@ func (p *parts) take(g *itemG) {
 	case g.Param != nil:
 		p.addParam(wordOf(g.Param.Name), valueOfToken(g.Param.Value))
 		for _, m := range g.Param.More {
-			p.addParam(Word{}, valueOfToken(m))
+			if kindOf(m) != commaToken {
+				p.addParam(Word{}, valueOfToken(m))
+			}
 		}
 	case g.Mark.Type == 0:
 		p.addField(fieldOf(g.Field))

@@ -22,7 +22,7 @@ type choiceG struct {
 
 // operandG is a primary with the signs before it.
 type operandG struct {
-	Signs  []lexer.Token `parser:"@('+' | '-' | Not)*"`
+	Signs  []lexer.Token `parser:"@( ( '+' | '-' | Not )+ )?"`
 	Number lexer.Token   `parser:"(  @Number"`
 	Probe  *probeG       `parser:" | @@"`
 	Name   *nameG        `parser:" | @@"`
@@ -33,7 +33,7 @@ type operandG struct {
 // probeG is v(node), v(a,b) or i(element).
 type probeG struct {
 	Func  lexer.Token   `parser:"@Probe '('"`
-	Names []lexer.Token `parser:"@Node ( ',' @Node )*"`
+	Names []lexer.Token `parser:"@( Node ( ',' Node )* )"`
 	Close lexer.Token   `parser:"@')'"`
 }
 

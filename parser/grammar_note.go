@@ -61,13 +61,13 @@ type expectG struct {
 
 // pathG is `path(a,b)`.
 type pathG struct {
-	From lexer.Token `parser:"'path' Open @Word ','"`
-	To   lexer.Token `parser:"@Word Close"`
+	From lexer.Token `parser:"'path' Open @Node ','"`
+	To   lexer.Token `parser:"@Node Close"`
 }
 
 // settleG is `settle(node)`.
 type settleG struct {
-	Node lexer.Token `parser:"'settle' Open @Word Close"`
+	Node lexer.Token `parser:"'settle' Open @Node Close"`
 }
 
 // nodeG is `v(node)` and what is expected of it.
@@ -86,8 +86,8 @@ type claimG struct {
 	Cond    *condG        `parser:" | @@"`
 	Within  *exprG        `parser:" | 'within' @@"`
 	Bits    *bitsG        `parser:" | 'to' @@"`
-	Modes   []lexer.Token `parser:" | 'in' @Word ( ','? @Word )*"`
-	Corners []lexer.Token `parser:" | 'at' @Word ( ','? @Word )* ) ','?"`
+	Modes   []lexer.Token `parser:" | 'in' @( Word ( ','? Word )* )"`
+	Corners []lexer.Token `parser:" | 'at' @( Word ( ','? Word )* ) ) ','?"`
 }
 
 // bitsG is `12bit`.

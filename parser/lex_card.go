@@ -57,11 +57,15 @@ func (x *cardLexer) step() bool {
 		return true
 	case '=':
 		x.at++
-		if n := len(x.tokens); n > 0 && x.tokens[n-1].kind == wordToken {
+		n := len(x.tokens)
+		keyed := n > 0 && x.tokens[n-1].kind == wordToken
+		if keyed {
 			x.tokens[n-1].kind = keyToken
 		}
 		x.add(assignToken, start)
-		x.value()
+		if keyed || n > 0 && x.tokens[n-1].kind == closeToken {
+			x.value() // else it joins a table to its points
+		}
 		return true
 	case ',':
 		x.at++

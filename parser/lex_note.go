@@ -191,7 +191,9 @@ func (x *noteLexer) continues() bool {
 func (x *noteLexer) word(start int) {
 	probe := (lower(x.text[start]) == 'v' || lower(x.text[start]) == 'i') && start+1 < x.end && x.text[start+1] == '('
 	if probe {
-		x.probe(start)
+		x.at++
+		x.add(probeToken, start)
+		x.nodes()
 		return
 	}
 	for x.at < x.end {
@@ -230,6 +232,23 @@ func (x *noteLexer) word(start int) {
 		}
 	}
 	x.add(kind, start)
+	switch {
+	case (text == "path" || text == "settle") && x.at < x.end && x.text[x.at] == '(':
+		x.nodes()
+	case (text == "within" || text == "to") && x.regions:
+		x.expression()
+	}
+}
+
+// nodes takes a parenthesis with names of nodes in it, which may be any word.
+func (x *noteLexer) nodes() {
+	e := exprLexer{lexed: x.lexed, at: x.at, end: x.end, probe: 1}
+	for e.step() {
+		if k := e.tokens[len(e.tokens)-1].kind; k == closeToken || k == strayToken {
+			break
+		}
+	}
+	x.tokens, x.at = e.tokens, e.at
 }
 
 // second is the length of blanks and the second word of a region's name, 0 if it
@@ -245,18 +264,6 @@ func (x *noteLexer) second(first string) int {
 		return 0
 	}
 	return len(rest) - len(trimmed) + len(want)
-}
-
-// probe takes `v(` and the names up to the closing parenthesis.
-func (x *noteLexer) probe(start int) {
-	e := exprLexer{lexed: x.lexed, at: start, end: x.end}
-	for e.step() {
-		if k := e.tokens[len(e.tokens)-1].kind; k == closeToken || k == strayToken {
-			break
-		}
-	}
-	x.tokens = e.tokens
-	x.at = e.at
 }
 
 // busBit is the length of `<3>` or `<7:0>` at the start of s, else 0.
