@@ -53,6 +53,7 @@ type build struct {
 	label    string // overrides the family's, where levels share a family
 	rd, rs   access // the card's own access resistances
 	junction junction
+	beside   *beside
 	assumed  bool // core has no weak inversion of its own
 }
 
@@ -67,6 +68,7 @@ type Device struct {
 	rd, rs   access
 	resists  bool
 	junction junction
+	beside   *beside
 	assumed  bool
 }
 
@@ -82,6 +84,10 @@ func Compile(c Card, g Geometry, tempC float64) (*Device, []Note) {
 		return nil, p.notes
 	}
 	at := climateOf(c, p, tempC)
+	if c.Vertical {
+		// The card describes the whole device; an instance states no size.
+		g.W, g.L = orOne(g.W), orOne(g.L)
+	}
 	checkGeometry(p, &g)
 	if p.failed() {
 		return nil, p.notes
@@ -94,7 +100,7 @@ func Compile(c Card, g Geometry, tempC float64) (*Device, []Note) {
 	d := &Device{
 		core: b.core, level: f.label, s: at.s, vt: at.vt, m: g.M,
 		rd: b.rd.plus(g.RD), rs: b.rs.plus(g.RS),
-		junction: b.junction, assumed: b.assumed,
+		junction: b.junction, beside: b.beside, assumed: b.assumed,
 	}
 	if b.label != "" {
 		d.level = b.label
@@ -172,8 +178,7 @@ func checkGeometry(p *params, g *Geometry) {
 // none: another model is never put in its place.
 func familyOf(c Card, p *params) *family {
 	if c.Vertical {
-		p.fatal("", "a vdmos model is not modelled")
-		return nil
+		return &vdmosFamily
 	}
 	level := p.get("level", 1)
 	for i := range families {

@@ -29,6 +29,9 @@ func (d *Device) Eval(vgs, vds, vbs float64) Point {
 		d.throughAccess(&c, &p.Internal, rd, rs)
 	}
 	p.Internal.Vth, p.Internal.Vdsat = c.vth, c.vdsat
+	if d.beside != nil {
+		d.addBeside(&c.id, ds, p.Swapped)
+	}
 	if !c.id.finite() {
 		c.id, p.Failed = dual{}, true
 	}
@@ -63,6 +66,17 @@ func (d *Device) throughAccess(c *channel, in *Inner, rd, rs access) {
 	in.VDS = math.Max(0, in.VDS-id.v*(rsv.v+rdv.v))
 	*c = inner
 	c.id = id
+}
+
+// addBeside adds what conducts between drain and source beside the channel.
+func (d *Device) addBeside(id *dual, vds float64, swapped bool) {
+	if swapped {
+		i, g := d.beside.at(-vds)
+		id.v, id.d = id.v-i, id.d+g
+		return
+	}
+	i, g := d.beside.at(vds)
+	id.v, id.d = id.v+i, id.d+g
 }
 
 // wire turns the current and its derivatives back to the terminals as wired.
