@@ -220,8 +220,7 @@ func (b *builder) call(x *Instance, def *Scope) *Cell {
 	args := map[string]Value{}
 	for name, v := range x.Params {
 		if def.declares(name) || name != "m" && def.mentions(name) {
-			args[name] = v
-			b.report(b.cell.Scope, v.Err)
+			args[name] = v // one without a value is reported where it is used
 		}
 	}
 	c := b.instantiate(def, b.cell.Env.of(def.Parent), args)
@@ -253,9 +252,16 @@ func (b *builder) params(e *ElementAt, known map[string]map[string]Value) map[st
 	}
 	got := make(map[string]Value, len(e.Params))
 	for k := range e.Params {
-		if p := &e.Params[k]; !p.Name.IsZero() {
-			got[parser.Fold(p.Name.Text)] = b.value(p.Value, e.Place)
+		p := &e.Params[k]
+		if p.Name.IsZero() {
+			continue
 		}
+		name := parser.Fold(p.Name.Text)
+		v := b.value(p.Value, e.Place)
+		if e.Letter != 'x' && p.Value.Form == parser.NameValue && !numeric[name] {
+			v.Err = asWord(v.Err, p.Value.Text)
+		}
+		got[name] = v
 	}
 	known[text] = got
 	return got
@@ -268,12 +274,10 @@ func (b *builder) value(v parser.Value, at Place) Value {
 	if v.Form == parser.NoValue {
 		return Value{V: 1, Set: true} // a flag: off
 	}
-	if ev := asEvalError(got.Err); ev != nil && ev.Kind == Undefined && v.Form == parser.NameValue {
+	if got.Err != nil && v.Form == parser.NameValue {
 		name := parser.Fold(v.Text)
 		if b.cell.Env.hasModel(name) || b.cell.Env.subckt(name) != nil {
-			word := *ev
-			word.Kind, word.Message = NotNumber, "\""+v.Text+"\" is a name, not a number"
-			got.Err = &word
+			got.Err = asWord(got.Err, v.Text)
 		}
 	}
 	return got

@@ -63,6 +63,15 @@ func (b *builder) reportParams(e *ElementAt, params map[string]Value) {
 	}
 }
 
+// numeric are the parameters of elements that mean a number, so that a bare name
+// behind them must be a parameter's. Decks add others of all kinds: `style=normal`.
+var numeric = map[string]bool{
+	"w": true, "l": true, "m": true, "nf": true, "ng": true, "nfin": true, "mult": true, "multi": true, "par": true,
+	"ad": true, "as": true, "pd": true, "ps": true, "nrd": true, "nrs": true, "sa": true, "sb": true, "sd": true,
+	"delvto": true, "dtemp": true, "temp": true, "area": true, "pj": true, "perim": true,
+	"r": true, "res": true, "c": true, "cap": true, "value": true, "dc": true, "gain": true, "gm": true, "tc": true, "tc1": true, "tc2": true,
+}
+
 // valueNames are the parameters that give an element's value by name.
 var valueNames = map[Kind][]string{
 	Resistor:  {"r", "res", "value"},

@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"strings"
 
+	"triodeck/parser"
 	"triodeck/parser/source"
 )
 
@@ -53,6 +54,18 @@ func locate(err error, doc *Document, card int) error {
 	at := *ev
 	at.Place = place(doc, card, ev.Span)
 	return &at
+}
+
+// asWord turns the error of a bare name that no parameter has into that of a
+// word: it was not meant as a number.
+func asWord(err error, text string) error {
+	ev := asEvalError(err)
+	if ev == nil || ev.Kind != Undefined || parser.Fold(ev.Name) != parser.Fold(text) {
+		return err
+	}
+	word := *ev
+	word.Kind, word.Message = NotNumber, "\""+text+"\" is a name, not a number"
+	return &word
 }
 
 func undefined(kind, name string, sp source.Span) error {

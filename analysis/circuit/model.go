@@ -148,10 +148,8 @@ func (e *Env) modelValue(def *ModelDef, p *parser.Param) Value {
 	if p.Value.Form == parser.NoValue {
 		return Value{V: 1, Set: true}
 	}
-	if ev := asEvalError(v.Err); ev != nil && ev.Kind == Undefined && p.Value.Form == parser.NameValue {
-		word := *ev // `mfg=acme`
-		word.Kind, word.Message = NotNumber, "\""+p.Value.Text+"\" is a name, not a number"
-		v.Err = &word
+	if v.Err != nil && p.Value.Form == parser.NameValue {
+		v.Err = asWord(v.Err, p.Value.Text) // `mfg=acme`
 	}
 	return v
 }
