@@ -133,11 +133,11 @@ func (a *analyser) noTarget(c *Context, n circuit.NoteAt, e *parser.Expect) {
 	} else {
 		place = placeOf(n, w.Start, w.Span().End)
 	}
-	if _, ok := c.Cell.DeviceByName(fold(w)); ok {
+	if c.Cell.DeviceByName(fold(w)) != nil {
 		a.problem(NeverApplies, place, fmt.Sprintf("%s is no MOSFET: the expectation never applies", w.Text))
 		return
 	}
-	if inst, ok := c.Cell.InstanceByName(fold(w)); ok && inst.Cell != nil {
+	if inst := c.Cell.InstanceByName(fold(w)); inst != nil && inst.Cell != nil {
 		a.problem(NeverApplies, place, fmt.Sprintf("%s holds more than one MOSFET: name the one that is meant, as in %s.m1", w.Text, w.Text))
 		return
 	}

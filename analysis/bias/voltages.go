@@ -138,8 +138,8 @@ func (v *voltages) insideInstance(name string) bool {
 			_, has := cell.NetByName(name)
 			return has
 		}
-		inst, has := cell.InstanceByName(head)
-		if !has || inst.Cell == nil {
+		inst := cell.InstanceByName(head)
+		if inst == nil || inst.Cell == nil {
 			return false
 		}
 		cell, name = inst.Cell, rest
