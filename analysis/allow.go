@@ -3,6 +3,7 @@ package analysis
 import (
 	"strings"
 
+	"triodeck/analysis/bias"
 	"triodeck/analysis/circuit"
 	"triodeck/parser"
 	"triodeck/parser/source"
@@ -80,11 +81,11 @@ func (a *Allowance) covers(f *Finding) bool {
 	}
 	target := targetName(a.On.Text)
 	path := parser.Fold(f.Subject.Path)
-	if a.root && path != "" && glob(target, path) {
+	if a.root && path != "" && bias.Match(target, path) {
 		return true
 	}
 	if a.holds(f.Place) {
-		if path != "" && glob(target, path[strings.LastIndexByte(path, '.')+1:]) {
+		if path != "" && bias.Match(target, path[strings.LastIndexByte(path, '.')+1:]) {
 			return true
 		}
 		return a.names(f.Place, target)
@@ -98,7 +99,7 @@ func (a *Allowance) names(at circuit.Place, target string) bool {
 		return false
 	}
 	e, ok := at.Doc.File.Card(at.Card).Stmt.(*parser.Element)
-	return ok && glob(target, parser.Fold(e.Name.Text))
+	return ok && bias.Match(target, parser.Fold(e.Name.Text))
 }
 
 func (a *Allowance) sameCard(at circuit.Place) bool {
@@ -116,30 +117,4 @@ func targetName(s string) string {
 		return strings.TrimSpace(s[2 : len(s)-1])
 	}
 	return s
-}
-
-// glob matches a name against a pattern in which `*` stands for any text and
-// `?` for one byte; every other byte, brackets included, stands for itself.
-func glob(pattern, name string) bool {
-	star, mark := -1, 0
-	p, n := 0, 0
-	for n < len(name) {
-		switch {
-		case p < len(pattern) && pattern[p] == '*':
-			star, mark = p, n
-			p++
-		case p < len(pattern) && (pattern[p] == '?' || pattern[p] == name[n]):
-			p++
-			n++
-		case star >= 0:
-			mark++
-			p, n = star+1, mark
-		default:
-			return false
-		}
-	}
-	for p < len(pattern) && pattern[p] == '*' {
-		p++
-	}
-	return p == len(pattern)
 }

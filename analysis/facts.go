@@ -1,12 +1,11 @@
 package analysis
 
 import (
-	"cmp"
-	"slices"
 	"sync"
 
 	"triodeck/analysis/bias"
 	"triodeck/analysis/circuit"
+	"triodeck/parser"
 )
 
 // Facts is a deck with what several rules ask of it, each worked out once.
@@ -18,17 +17,21 @@ type Facts struct {
 	scopes func() []*circuit.Scope
 	whole  func() bool
 	closed func() bool
+
+	mu      sync.Mutex
+	foreign map[*parser.File]string
 }
 
 // NewFacts prepares the facts of a deck; both arguments may be nil.
 func NewFacts(d *circuit.Design, b *bias.Result) *Facts {
 	return &Facts{
-		Design: d,
-		Bias:   b,
-		cells:  sync.OnceValue(func() []*circuit.Cell { return cellsOf(d) }),
-		scopes: sync.OnceValue(func() []*circuit.Scope { return scopesOf(d) }),
-		whole:  sync.OnceValue(func() bool { return d != nil && whole(d) }),
-		closed: sync.OnceValue(func() bool { return d != nil && closed(d) }),
+		Design:  d,
+		Bias:    b,
+		foreign: map[*parser.File]string{},
+		cells:   sync.OnceValue(func() []*circuit.Cell { return cellsOf(d) }),
+		scopes:  sync.OnceValue(func() []*circuit.Scope { return scopesOf(d) }),
+		whole:   sync.OnceValue(func() bool { return d != nil && whole(d) }),
+		closed:  sync.OnceValue(func() bool { return d != nil && closed(d) }),
 	}
 }
 
@@ -36,8 +39,7 @@ func NewFacts(d *circuit.Design, b *bias.Result) *Facts {
 // first use, then the subckts that nothing instantiates.
 func (f *Facts) Cells() []*circuit.Cell { return f.cells() }
 
-// Scopes lists every scope of the text once, outer before inner, in order of
-// their names' places.
+// Scopes lists every scope of the text once, outer before inner.
 func (f *Facts) Scopes() []*circuit.Scope { return f.scopes() }
 
 // Whole says that the root file is a deck of its own and not a part for others
@@ -79,25 +81,21 @@ func scopesOf(d *circuit.Design) []*circuit.Scope {
 		return nil
 	}
 	list := []*circuit.Scope{d.Top}
-	seen := map[*circuit.Scope]bool{d.Top: true}
-	order := map[*circuit.Document]int{}
-	for i, doc := range d.Docs {
-		order[doc] = i
-	}
 	for i := 0; i < len(list); i++ {
-		var inner []*circuit.Scope
-		for _, defs := range list[i].Subckts {
-			for _, s := range defs {
-				if !seen[s] {
-					seen[s] = true
-					inner = append(inner, s)
-				}
-			}
-		}
-		slices.SortFunc(inner, func(a, b *circuit.Scope) int {
-			return cmp.Or(cmp.Compare(order[a.Place.Doc], order[b.Place.Doc]), cmp.Compare(a.Place.Span.Start, b.Place.Span.Start))
-		})
-		list = append(list, inner...)
+		list = append(list, list[i].Children...)
 	}
 	return list
+}
+
+// Foreign says why a file is no deck, "" if it is one. Nothing else is said of
+// a file that is none.
+func (f *Facts) Foreign(doc *circuit.Document) string {
+	f.mu.Lock()
+	defer f.mu.Unlock()
+	why, ok := f.foreign[doc.File]
+	if !ok {
+		why = foreign(doc.File)
+		f.foreign[doc.File] = why
+	}
+	return why
 }

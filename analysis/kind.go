@@ -1,15 +1,35 @@
 package analysis
 
 import (
+	"fmt"
 	"strings"
 
 	"triodeck/analysis/circuit"
 	"triodeck/parser"
 )
 
-// Foreign says that a file is no deck: it holds a byte that no text has.
-func Foreign(doc *circuit.Document) bool {
-	return strings.IndexByte(doc.File.Src, 0) >= 0
+// A file most of whose statements cannot be read is written in some other
+// language; below this number of bad ones it is a deck with mistakes.
+const foreignErrors = 20
+
+func foreign(f *parser.File) string {
+	if at := strings.IndexByte(f.Src, 0); at >= 0 {
+		return fmt.Sprintf("this is a binary file, not a deck: byte %d is zero", at+1)
+	}
+	bad, all := 0, 0
+	for i := range f.Len() {
+		switch c := f.Card(i); c.Kind {
+		case parser.ErrorCard:
+			bad++
+			all++
+		case parser.ElementCard, parser.DirectiveCard:
+			all++
+		}
+	}
+	if bad >= foreignErrors && 2*bad > all {
+		return fmt.Sprintf("this does not read as a deck: %d of %d statements are in no form that is known here", bad, all)
+	}
+	return ""
 }
 
 // analyses are the directives that ask a simulator for results. A file that has

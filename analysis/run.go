@@ -91,7 +91,7 @@ func (r *run) pass(rule *Rule, doc *circuit.Document) {
 	before := len(r.found)
 	p := &Pass{Facts: r.facts, Rule: rule, Doc: doc, Rules: r.rules, unused: r.unused}
 	p.report = func(f Finding) {
-		if f = r.tidy(f, doc); f.Place.Doc != nil && !(Foreign(f.Place.Doc) && rule.Scope != PerFile) {
+		if f = r.tidy(f, doc); f.Place.Doc != nil && (rule.Scope == PerFile || r.facts.Foreign(f.Place.Doc) == "") {
 			r.add(f)
 		}
 	}

@@ -116,15 +116,17 @@ func (c *cache) get(path string, files FileSystem) (*parser.File, error) {
 		c.entries[path] = e
 	}
 	c.mu.Unlock()
-	e.once.Do(func() {
-		src, err := files.ReadFile(path)
-		if err != nil {
-			e.err = err
-			return
-		}
-		e.file = parser.Parse(src)
-	})
+	e.once.Do(func() { e.read(path, files) })
 	return e.file, e.err
+}
+
+func (e *entry) read(path string, files FileSystem) {
+	src, err := files.ReadFile(path)
+	if err != nil {
+		e.err = err
+		return
+	}
+	e.file = parser.Parse(src)
 }
 
 func (c *cache) without(path string) *cache {

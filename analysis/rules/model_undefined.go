@@ -1,0 +1,60 @@
+package rules
+
+import (
+	_ "embed"
+	"maps"
+	"slices"
+
+	"triodeck/analysis"
+	"triodeck/analysis/bias"
+	"triodeck/analysis/circuit"
+	"triodeck/parser"
+)
+
+//go:embed model-undefined.md
+var modelUndefinedText string
+
+// ModelUndefined looks for devices whose model no file defines.
+var ModelUndefined = &analysis.Rule{
+	Name: "model-undefined", Severity: analysis.Error, Scope: analysis.PerDesign, Text: modelUndefinedText, Run: modelUndefined,
+}
+
+func modelUndefined(p *analysis.Pass) {
+	var m missings
+	for _, c := range p.Cells() {
+		for _, d := range c.Devices {
+			if d.Model == nil && needsModel(d) && !fitted(c.Scope, d.Elem.Model.Text) {
+				m.add(c.Scope, d.Place, d.Elem)
+			}
+		}
+	}
+	names := map[string]bool{}
+	for _, s := range p.Scopes() {
+		for name := range s.Models {
+			names[baseName(name)] = true
+		}
+	}
+	m.report(p, "model", slices.Sorted(maps.Keys(names)))
+}
+
+// needsModel says whether a device cannot do without. A resistor's third word
+// may be a value in a form that is not read, and is left alone.
+func needsModel(d *circuit.Device) bool {
+	switch d.Kind {
+	case circuit.MOSFET, circuit.Diode, circuit.Bipolar:
+		return d.Elem.Model.Text != ""
+	}
+	return false
+}
+
+// fitted says whether the writer gives a stand-in for the model.
+func fitted(s *circuit.Scope, model string) bool {
+	for ; s != nil; s = s.Parent {
+		for _, n := range s.Notes {
+			if fit, ok := n.Note.(*parser.Fit); ok && bias.Match(parser.Fold(fit.Model.Text), parser.Fold(model)) {
+				return true
+			}
+		}
+	}
+	return false
+}

@@ -1,0 +1,127 @@
+package rules
+
+import (
+	_ "embed"
+	"fmt"
+	"math"
+	"strings"
+
+	"triodeck/analysis"
+	"triodeck/analysis/bias"
+	"triodeck/analysis/circuit"
+	"triodeck/analysis/quantity"
+	"triodeck/parser"
+)
+
+//go:embed rating-exceeded.md
+var ratingExceededText string
+
+// RatingExceeded holds each device against the ratings that the deck states for
+// its model.
+var RatingExceeded = &analysis.Rule{
+	Name: "rating-exceeded", Severity: analysis.Error, Scope: analysis.PerResult, Text: ratingExceededText, Run: ratingExceeded,
+}
+
+func ratingExceeded(p *analysis.Pass) {
+	worst := map[ratedKey]*excess{}
+	var order []ratedKey
+	for m := range parts(p.Bias) {
+		if m.Points == nil {
+			continue
+		}
+		for _, n := range notesFor(m, p.Design) {
+			r, ok := n.Note.(*parser.Rating)
+			if !ok || n.Err != nil || !rated(r, m) {
+				continue
+			}
+			for _, cond := range r.Conds {
+				x, ok := exceeds(m, n, cond)
+				if !ok {
+					continue
+				}
+				key := ratedKey{keyOf(m.Card), bias.Canonical(cond.Name)}
+				if was := worst[key]; was == nil {
+					order = append(order, key)
+					worst[key] = x
+				} else if x.by > was.by {
+					*was = *x
+				}
+			}
+		}
+	}
+	for _, key := range order {
+		x := worst[key]
+		p.Report(analysis.Finding{
+			Severity: p.Rule.Severity, Place: x.m.Name(), Subject: x.m.subject(), Message: x.message(),
+			Related: []analysis.Related{{Place: x.at, Message: "the rating stands here"}},
+		})
+	}
+}
+
+type ratedKey struct {
+	card     cardKey
+	quantity string
+}
+
+// excess is one limit passed at a device's worst sample.
+type excess struct {
+	m      part
+	at     circuit.Place // of the rating
+	cond   parser.Compare
+	value  float64 // SI, magnitude
+	limit  float64
+	by     float64 // value over limit
+	sample int
+}
+
+func (x *excess) message() string {
+	unit := bias.Unit(x.cond.Name)
+	show := func(v float64) string {
+		if unit == "V" {
+			return quantity.Volts(v)
+		}
+		return quantity.Format(v, unit)
+	}
+	return fmt.Sprintf("%s of %s reaches %s, beyond its rating of %s for %q%s", bias.ShownPair(x.m.Polarity, x.cond.Name), x.m.Path,
+		show(x.value), show(x.limit), x.m.Model, conditionIn(x.m.Run, x.m.Context, x.sample))
+}
+
+// exceeds compares magnitudes: a limit holds in both directions.
+func exceeds(m part, n circuit.NoteAt, cond parser.Compare) (*excess, bool) {
+	if !strings.HasPrefix(cond.Op, "<") || cond.Lo == nil {
+		return nil, false
+	}
+	limit, err := m.Context.Cell.Env.Eval(cond.Lo)
+	e, ok := m.Range(cond.Name)
+	if err != nil || !ok || limit <= 0 {
+		return nil, false
+	}
+	x := &excess{m: m, at: analysis.Within(n.Place, cond.Span), cond: cond, limit: limit, value: math.Abs(e.Max), sample: e.AtMax}
+	if v := math.Abs(e.Min); v > x.value {
+		x.value, x.sample = v, e.AtMin
+	}
+	x.by = x.value / limit
+	return x, x.by > 1 && !math.IsInf(x.value, 0)
+}
+
+// notesFor gives the annotations whose scope holds a part: its own cell's, those
+// around it in the text, and the deck's.
+func notesFor(m part, d *circuit.Design) []circuit.NoteAt {
+	var list []circuit.NoteAt
+	top := false
+	for s := m.Context.Cell.Scope; s != nil; s = s.Parent {
+		list = append(list, s.Notes...)
+		top = top || s == d.Top
+	}
+	if !top {
+		list = append(list, d.Top.Notes...)
+	}
+	return list
+}
+
+// rated says whether a rating's model name, wildcards allowed, is the part's: of
+// its model, without the number of its bin, or of the subckt that wraps it.
+func rated(r *parser.Rating, m part) bool {
+	pattern := parser.Fold(r.Model.Text)
+	return bias.Match(pattern, baseName(parser.Fold(m.Model))) || m.Wrapper != "" && bias.Match(pattern, m.Wrapper)
+}
