@@ -1,0 +1,160 @@
+package ide
+
+import (
+	"math"
+	"slices"
+	"strings"
+
+	"triodeck/analysis/bias"
+	"triodeck/parser"
+)
+
+// operation is one MOSFET in one mode, as one instance sees it, over the corners.
+type operation struct {
+	path  string // of the instance, "" at the top level
+	mode  string
+	parts []part // one a corner
+}
+
+// part is the device at one corner.
+type part struct {
+	corner  string
+	context *bias.Context
+	*bias.Device
+}
+
+// operations lists what a MOSFET's card does: in every mode, in every distinct
+// instance of its subckt.
+func operations(seen []sighting, e *parser.Element) []operation {
+	var out []operation
+	for _, s := range seen {
+		for _, d := range s.context.Devices {
+			if d.Device.Elem != e {
+				continue
+			}
+			p := part{s.run.Corner, s.context, d}
+			i := slices.IndexFunc(out, func(o operation) bool { return o.path == s.path && o.mode == s.run.Mode })
+			if i < 0 {
+				i = len(out)
+				out = append(out, operation{path: s.path, mode: s.run.Mode})
+			}
+			out[i].parts = append(out[i].parts, p)
+		}
+	}
+	// An instance's modes together, instances in the order of their first mention.
+	order := map[string]int{}
+	for _, o := range out {
+		if _, ok := order[o.path]; !ok {
+			order[o.path] = len(order)
+		}
+	}
+	slices.SortStableFunc(out, func(a, b operation) int { return order[a.path] - order[b.path] })
+	return out
+}
+
+// evaluated are the corners at which the device has an operating point.
+func (o operation) evaluated() []part {
+	return slices.DeleteFunc(slices.Clone(o.parts), func(p part) bool { return len(p.Points) == 0 })
+}
+
+// bound is an extreme value of a quantity and where it is taken.
+type bound struct {
+	v  float64
+	at string
+}
+
+// bounds are the extremes of a quantity over corners and range; not ok if the
+// device is evaluated nowhere or has no such quantity.
+func (o operation) bounds(name string) (lo, hi bound, ok bool) {
+	lo, hi = bound{v: math.Inf(1)}, bound{v: math.Inf(-1)}
+	for _, p := range o.evaluated() {
+		for s := range p.Points {
+			v, has := bias.Quantity(p.Device, s, name)
+			if !has {
+				continue
+			}
+			if !ok || v < lo.v {
+				lo = bound{v, o.at(p, s)}
+			}
+			if !ok || v > hi.v {
+				hi = bound{v, o.at(p, s)}
+			}
+			ok = true
+		}
+	}
+	return lo, hi, ok
+}
+
+// at names a sample: the corner, if there are several, and the ranged nodes.
+func (o operation) at(p part, sample int) string {
+	at := p.context.At(sample)
+	if len(o.parts) < 2 {
+		return at
+	}
+	return joined(", ", cornerName(p.corner), at)
+}
+
+// cornerName is how a corner is spoken of; that without a name is the nominal.
+func cornerName(corner string) string {
+	if corner == "" {
+		return "nominal"
+	}
+	return corner
+}
+
+// joined joins the texts that are not empty.
+func joined(sep string, texts ...string) string {
+	return strings.Join(slices.DeleteFunc(texts, func(s string) bool { return s == "" }), sep)
+}
+
+// value is the range of a quantity, with its unit; "" if there is none.
+func (o operation) value(name string) string {
+	lo, hi, ok := o.bounds(name)
+	if !ok {
+		return ""
+	}
+	return spread(lo.v, hi.v, bias.Unit(name))
+}
+
+// regions are the names of the regions that the device is in, each once. With
+// one only, its nearness to another is told.
+func (o operation) regions() string {
+	var names []string
+	last := ""
+	for _, p := range o.evaluated() {
+		for _, v := range p.Verdicts {
+			last = v.String()
+			if name := v.Region.String(); !slices.Contains(names, name) {
+				names = append(names, name)
+			}
+		}
+	}
+	parts := o.evaluated()
+	if len(names) == 1 && len(parts) == 1 && len(parts[0].Verdicts) == 1 {
+		return last
+	}
+	return strings.Join(names, " / ")
+}
+
+// missing are the nodes to annotate before the device can be evaluated.
+func (o operation) missing() []string {
+	var nodes []string
+	for _, p := range o.parts {
+		for _, n := range p.Missing {
+			if !slices.Contains(nodes, n) {
+				nodes = append(nodes, n)
+			}
+		}
+	}
+	return nodes
+}
+
+// reason is why the device is not evaluated, if unknown nodes are not the cause.
+func (o operation) reason() string {
+	for _, p := range o.parts {
+		if p.Reason != "" {
+			return p.Reason
+		}
+	}
+	return ""
+}
