@@ -1,0 +1,92 @@
+package main
+
+import (
+	"context"
+	"fmt"
+	"os"
+	"time"
+
+	"triodeck/analysis"
+	"triodeck/analysis/report"
+	"triodeck/analysis/rules"
+	"triodeck/analysis/workspace"
+)
+
+type lintCmd struct {
+	Paths  []string `arg:"" optional:"" help:"Decks, and folders to look for decks in (default: the working folder)."`
+	Format string   `help:"text or json." enum:"text,json" default:"text"`
+	FailOn string   `help:"Exit with 1 at this severity or above: error, warning or note." enum:"error,warning,note" default:"error"`
+}
+
+func (c *lintCmd) Run(ctx context.Context, s streams) error {
+	paths := c.Paths
+	if len(paths) == 0 {
+		paths = []string{"."}
+	}
+	start := time.Now()
+	bar := newProgress(s.err)
+	findings, sum, err := workspace.New(workspace.OS()).Lint(ctx, paths, rules.All, bar.update)
+	bar.done()
+	if err != nil {
+		fmt.Fprintf(s.err, "triodeck: %v\n", err)
+	}
+	if printErr := c.print(s, findings, sum, time.Since(start)); printErr != nil {
+		return printErr
+	}
+	switch {
+	case err != nil:
+		return status(exitUnable)
+	case atOrAbove(findings, c.FailOn):
+		return status(exitFindings)
+	}
+	return nil
+}
+
+func (c *lintCmd) print(s streams, findings []analysis.Finding, sum report.Summary, took time.Duration) error {
+	folder, err := os.Getwd()
+	if err != nil {
+		folder = ""
+	}
+	shown := report.Relative(folder)
+	if c.Format == "json" {
+		return report.JSON(s.out, findings, sum, shown)
+	}
+	terminal := isTerminal(s.out)
+	opt := report.TextOptions{Path: shown, Source: terminal}
+	if terminal && os.Getenv("NO_COLOR") == "" {
+		opt.Style = colours
+	}
+	if err := report.Text(s.out, findings, opt); err != nil {
+		return err
+	}
+	_, err = fmt.Fprintln(s.err, summary(sum, took))
+	return err
+}
+
+// summary tells what the run covered, in one line.
+func summary(s report.Summary, took time.Duration) string {
+	text := fmt.Sprintf("%s in %s: %s evaluated", plural(s.Files, "deck"), took.Round(time.Millisecond), plural(s.Evaluated, "MOSFET"))
+	if s.NotEvaluated > 0 {
+		text += fmt.Sprintf(", %d not", s.NotEvaluated)
+	}
+	return text + fmt.Sprintf("; %s, %s, %s", plural(s.Errors, "error"), plural(s.Warnings, "warning"), plural(s.Notes, "note"))
+}
+
+func plural(n int, what string) string {
+	if n == 1 {
+		return "1 " + what
+	}
+	return fmt.Sprintf("%d %ss", n, what)
+}
+
+func atOrAbove(findings []analysis.Finding, level string) bool {
+	for _, f := range findings {
+		switch {
+		case f.Severity == analysis.Error,
+			f.Severity == analysis.Warning && level != "error",
+			level == "note":
+			return true
+		}
+	}
+	return false
+}
