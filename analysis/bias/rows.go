@@ -12,7 +12,7 @@ import (
 func (r *Result) Rows(run *Run) iter.Seq[Row] {
 	return func(yield func(Row) bool) {
 		for _, c := range run.Roots {
-			if !c.rows(c.prefix(), yield) {
+			if !c.rows(c.Prefix(), yield) {
 				return
 			}
 		}
@@ -33,8 +33,8 @@ func (c *Context) rows(prefix string, yield func(Row) bool) bool {
 	return true
 }
 
-// prefix heads the paths of a root: the name of a subckt that stands alone.
-func (c *Context) prefix() string {
+// Prefix heads the paths of a root: the name of a subckt that stands alone.
+func (c *Context) Prefix() string {
 	if !c.Alone {
 		return ""
 	}
@@ -63,7 +63,7 @@ func (r *Result) Contexts(run *Run) iter.Seq2[string, *Context] {
 			return true
 		}
 		for _, c := range run.Roots {
-			if !visit(c.prefix(), c) {
+			if !visit(c.Prefix(), c) {
 				return
 			}
 		}

@@ -3,10 +3,10 @@ package main
 import (
 	"encoding/json"
 	"math"
+	"strconv"
 	"strings"
 
 	"triodeck/analysis/bias"
-	"triodeck/analysis/circuit"
 )
 
 // opReport is what `op --format json` prints.
@@ -43,16 +43,6 @@ type opDevice struct {
 	Notes    []string `json:"notes"`
 }
 
-// opNode is a node's voltage in one mode at one corner.
-type opNode struct {
-	Node   string `json:"node"`
-	Mode   string `json:"mode"`
-	Corner string `json:"corner"`
-	V      amount `json:"v"`
-	Source string `json:"source"`
-	why    string
-}
-
 // amount is a quantity over the samples: one number, bounds, or nothing.
 type amount struct {
 	min, max float64
@@ -83,7 +73,21 @@ func finite(v float64) *float64 {
 	if math.IsInf(v, 0) || math.IsNaN(v) {
 		return nil
 	}
+	v = significant(v)
 	return &v
+}
+
+// significant rounds to 12 digits: beyond them a number differs from one
+// processor to the next. Zero has no sign.
+func significant(v float64) float64 {
+	if v == 0 {
+		return 0
+	}
+	r, err := strconv.ParseFloat(strconv.FormatFloat(v, 'e', 11, 64), 64)
+	if err != nil {
+		return v // infinite
+	}
+	return r
 }
 
 func amountOf(d *bias.Device, name string) amount {
@@ -100,9 +104,7 @@ func newOpReport(deck string, r *bias.Result, take func(*bias.Run) bool) opRepor
 		for row := range r.Rows(run) {
 			out.Devices = append(out.Devices, newOpDevice(run, row))
 		}
-		for path, c := range r.Contexts(run) {
-			out.Nodes = append(out.Nodes, nodesOf(run, path, c)...)
-		}
+		out.Nodes = append(out.Nodes, opNodes(run)...)
 	}
 	return out
 }
@@ -155,25 +157,4 @@ func notesOf(row bias.Row) []string {
 		notes = append(notes, "ron is unlimited: no channel current")
 	}
 	return append(notes, row.Device.Notes...)
-}
-
-func nodesOf(run *bias.Run, path string, c *bias.Context) []opNode {
-	if path != "" {
-		path += "."
-	}
-	var out []opNode
-	for i, n := range c.Nodes {
-		if circuit.NetID(i) == circuit.Ground {
-			continue
-		}
-		node := opNode{Node: path + c.Cell.Nets[i].Spelt, Mode: run.Mode, Corner: run.Corner, Source: n.Source.String(), why: n.Why}
-		for s, v := range n.V {
-			if s == 0 {
-				node.V = amount{v, v, true}
-			}
-			node.V.min, node.V.max = min(node.V.min, v), max(node.V.max, v)
-		}
-		out = append(out, node)
-	}
-	return out
 }

@@ -4,6 +4,8 @@ import (
 	"encoding/csv"
 	"fmt"
 	"io"
+	"math"
+	"slices"
 	"strconv"
 	"strings"
 	"text/tabwriter"
@@ -41,21 +43,6 @@ func (r opReport) table(w io.Writer) error {
 	return r.footnotes(w)
 }
 
-// nodeTable prints each node once a distinct voltage, with where it comes from.
-func (r opReport) nodeTable(w io.Writer) error {
-	fmt.Fprintln(w)
-	t := tabwriter.NewWriter(w, 0, 0, 2, ' ', 0)
-	fmt.Fprintln(t, "node\tmode\tcorner\tvoltage\tfrom")
-	for _, n := range r.Nodes {
-		from := n.why
-		if from == "" {
-			from = "unknown: annotate it"
-		}
-		fmt.Fprintf(t, "%s\t%s\t%s\t%s\t%s\n", n.Node, dash(n.Mode), dash(n.Corner), n.V.show("V"), from)
-	}
-	return t.Flush()
-}
-
 // footnotes prints each note once, with the devices that it is about.
 func (r opReport) footnotes(w io.Writer) error {
 	var order []string
@@ -65,7 +52,7 @@ func (r opReport) footnotes(w io.Writer) error {
 			if about[note] == nil {
 				order = append(order, note)
 			}
-			if list := about[note]; len(list) == 0 || list[len(list)-1] != d.Device {
+			if list := about[note]; !slices.Contains(list, d.Device) {
 				about[note] = append(list, d.Device)
 			}
 		}
@@ -106,7 +93,11 @@ func (a amount) show(unit string) string {
 	case a.flat():
 		return format(a.min)
 	}
-	return format(a.min) + " … " + format(a.max)
+	lo, hi := format(a.min), format(a.max)
+	if lo == hi {
+		return lo
+	}
+	return lo + " … " + hi
 }
 
 // csv prints the devices with the field names of the JSON; bounds as min..max.
@@ -128,7 +119,12 @@ func (r opReport) csv(w io.Writer) error {
 }
 
 func (a amount) csv() string {
-	num := func(v float64) string { return strconv.FormatFloat(v, 'g', -1, 64) }
+	num := func(v float64) string {
+		if math.IsInf(v, 1) {
+			return "inf"
+		}
+		return strconv.FormatFloat(significant(v), 'g', -1, 64)
+	}
 	switch {
 	case !a.known:
 		return ""

@@ -22,5 +22,18 @@ func TestMain(m *testing.M) {
 
 // TestScripts runs testdata/cli: a command line, its files and what it prints.
 func TestScripts(t *testing.T) {
-	testscript.Run(t, testscript.Params{Dir: "../../testdata/cli", UpdateScripts: *update})
+	testscript.Run(t, testscript.Params{Dir: "../../testdata/cli", UpdateScripts: *update, Cmds: map[string]func(*testscript.TestScript, bool, []string){"bytes": writeBytes}})
+}
+
+// writeBytes is the script command `bytes FILE`: every byte there is, four times
+// over, which no text can hold.
+func writeBytes(ts *testscript.TestScript, neg bool, args []string) {
+	if neg || len(args) != 1 {
+		ts.Fatalf("usage: bytes file")
+	}
+	data := make([]byte, 1024)
+	for i := range data {
+		data[i] = byte(i)
+	}
+	ts.Check(os.WriteFile(ts.MkAbs(args[0]), data, 0o644))
 }

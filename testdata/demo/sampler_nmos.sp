@@ -1,7 +1,7 @@
 Heron river-level logger: sampling switch of the level channel, one NMOS
 * The level sensor's amplifier swings 0.1 to 0.6 V, so a single NMOS will do.
 .lib 'heron180.lib' tt
-.param wsw=16u
+.param wsw=36u
 
 Vdd    vdd 0 1.8
 Vclk   clk 0 PULSE(0 1.8 0 1n 1n 0.5u 1u)
