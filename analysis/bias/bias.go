@@ -138,6 +138,7 @@ type Check struct {
 	Found   string // "saturation", "183 Ω"
 	Mode    string // of the worst
 	Corner  string
+	Sample  int    // the worst
 	At      string // the bias of the worst sample: "v(in)=1.60 V"; empty if nothing is ranged
 	Reason  string // NotJudged: why
 	Fails   int    // how many instances fail

@@ -95,7 +95,7 @@ func (j *judge) device(run *Run, t target, n circuit.NoteAt, e *parser.Expect, c
 		base.Place = placeOf(n, cond.Span.Start, cond.Span.End)
 		j.compare(t.context, cond, base, i+1, count, t.reason(), func(s int) (float64, bool) {
 			return Quantity(t.device, s, cond.Name)
-		}, Unit(cond.Name))
+		}, Unit(cond.Name), t.nets())
 	}
 }
 
@@ -113,7 +113,7 @@ func (j *judge) regions(t target, wishes []parser.RegionWish, base Check, count 
 		if ok && s > 0 {
 			continue
 		}
-		base.Found, base.At = v.String(), t.context.At(s)
+		base.Found, base.Sample, base.At = v.String(), s, t.context.AtDevice(t.device, s)
 		if !ok {
 			base.Status = Failed
 			score = math.Abs(t.device.Points[s].Margin())
@@ -172,12 +172,12 @@ func (j *judge) node(run *Run, path string, c *Context, n circuit.NoteAt, e *par
 		if !ok {
 			owner = c
 		}
-		j.compare(owner, cond, base, i+1, count, why, func(s int) (float64, bool) { return owner.Nodes[id].V[s], true }, "V")
+		j.compare(owner, cond, base, i+1, count, why, func(s int) (float64, bool) { return owner.Nodes[id].V[s], true }, "V", []circuit.NetID{id})
 	}
 }
 
 // compare judges one comparison over the samples.
-func (j *judge) compare(c *Context, cond parser.Compare, base Check, num, count int, why string, value func(int) (float64, bool), unit string) {
+func (j *judge) compare(c *Context, cond parser.Compare, base Check, num, count int, why string, value func(int) (float64, bool), unit string, nets []circuit.NetID) {
 	notJudged := func(why string) {
 		base.Status, base.Reason = NotJudged, why
 		j.record(num, count, 0, base)
@@ -205,9 +205,10 @@ func (j *judge) compare(c *Context, cond parser.Compare, base Check, num, count 
 		}
 		if score := excess(cond, v, lo, hi); s == 0 || score > worst {
 			worst = score
-			base.Found, base.At = show(v, unit), c.At(s)
+			base.Found, base.Sample = show(v, unit), s
 		}
 	}
+	base.At = c.atNets(base.Sample, nets)
 	if worst > 0 {
 		base.Status = Failed
 	}

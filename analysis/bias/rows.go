@@ -4,8 +4,6 @@ import (
 	"iter"
 	"math"
 	"strings"
-
-	"triodeck/analysis/quantity"
 )
 
 // Rows gives every MOSFET of a run under its hierarchical name, in card order.
@@ -68,18 +66,6 @@ func (r *Result) Contexts(run *Run) iter.Seq2[string, *Context] {
 			}
 		}
 	}
-}
-
-// At tells the ranged nodes' voltages at a sample: "v(in)=1.600 V"; "" if
-// nothing is ranged.
-func (c *Context) At(sample int) string {
-	var parts []string
-	for _, a := range c.Axes {
-		if sample >= 0 && sample < len(a.Values) {
-			parts = append(parts, "v("+a.Node+")="+quantity.Volts(a.Values[sample]))
-		}
-	}
-	return strings.Join(parts, ", ")
 }
 
 // counts is how many instances see each context of a run, at most MaxInt32.

@@ -27,6 +27,9 @@ func (t target) reason() string {
 	}
 }
 
+// nets are the device's terminals.
+func (t target) nets() []circuit.NetID { return t.device.Device.Nets }
+
 // voltagesOf lists nodes as an annotation would name them: "v(a), v(b)".
 func voltagesOf(nodes []string) string {
 	return "v(" + strings.Join(nodes, "), v(") + ")"

@@ -210,7 +210,7 @@ func (o operation) turns() []string {
 		}
 		var texts []string
 		for _, r := range spans[:min(len(spans), 4)] {
-			texts = append(texts, fmt.Sprintf("%s from %s", r.Region, p.context.At(r.From)))
+			texts = append(texts, fmt.Sprintf("%s from %s", r.Region, p.context.AtDevice(p.Device, r.From)))
 		}
 		if len(spans) > 4 {
 			texts = append(texts, "…")

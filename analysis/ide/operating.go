@@ -87,7 +87,7 @@ func (o operation) bounds(name string) (lo, hi bound, ok bool) {
 
 // at names a sample: the corner, if there are several, and the ranged nodes.
 func (o operation) at(p part, sample int) string {
-	at := p.context.At(sample)
+	at := p.context.AtDevice(p.Device, sample)
 	if len(o.parts) < 2 {
 		return at
 	}

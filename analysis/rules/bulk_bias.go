@@ -82,7 +82,7 @@ func (j *junction) message() string {
 		kind, side, rail = "PMOS", "below", "lowest"
 	}
 	bulk := j.m.Context.Cell.Nets[j.m.Device.Device.Nets[bulkTerminal]].Spelt
-	when := conditionIn(j.m.Run, j.m.Context, j.sample)
+	when := conditionAt(j.m, j.sample)
 	if j.end == "" {
 		return fmt.Sprintf("the bulk of %s %s is on %q at %s, the %s voltage known here: its junctions conduct wherever source or drain stand apart from it%s",
 			kind, j.m.Path, bulk, quantity.Volts(j.bulk), rail, when)

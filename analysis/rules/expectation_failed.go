@@ -64,7 +64,7 @@ func failure(c bias.Check, m part, known bool) string {
 	}
 	s := fmt.Sprintf("%s is in %s, expected %s", c.Subject, c.Found, c.Wanted)
 	if known {
-		s += numbers(m, c.At)
+		s += numbers(m, c.Sample)
 	}
 	return s
 }
@@ -85,17 +85,14 @@ func split(wanted string) (name, limit string) {
 	return name, limit
 }
 
-// numbers are the voltages that decide the region at the sample of that bias.
-func numbers(m part, at string) string {
-	for s := range m.Points {
-		if m.Context.At(s) != at {
-			continue
-		}
-		point, verdict := m.Points[s], m.Verdicts[s]
-		if point.Vov <= 0 {
-			return fmt.Sprintf(": %s is %s, Vth %s", bias.ShownPair(m.Polarity, "vgs"), quantity.Volts(point.VGS), quantity.Volts(point.Vth))
-		}
-		return fmt.Sprintf(": %s is %s, Vdsat %s", bias.ShownPair(m.Polarity, "vds"), quantity.Volts(point.VDS), quantity.Volts(verdict.Vdsat))
+// numbers are the voltages that decide the region at a sample.
+func numbers(m part, sample int) string {
+	if sample >= len(m.Points) {
+		return ""
 	}
-	return ""
+	point, verdict := m.Points[sample], m.Verdicts[sample]
+	if point.Vov <= 0 {
+		return fmt.Sprintf(": %s is %s, Vth %s", bias.ShownPair(m.Polarity, "vgs"), quantity.Volts(point.VGS), quantity.Volts(point.Vth))
+	}
+	return fmt.Sprintf(": %s is %s, Vdsat %s", bias.ShownPair(m.Polarity, "vds"), quantity.Volts(point.VDS), quantity.Volts(verdict.Vdsat))
 }

@@ -53,6 +53,9 @@ func parts(r *bias.Result) iter.Seq[part] {
 	}
 }
 
+// at tells the ranged nodes that move the device, at a sample.
+func (m part) at(sample int) string { return m.Context.AtDevice(m.Device, sample) }
+
 type partWalk struct {
 	run   *bias.Run
 	yield func(part) bool

@@ -83,7 +83,7 @@ func (x *excess) message() string {
 		return quantity.Format(v, unit)
 	}
 	return fmt.Sprintf("%s of %s reaches %s, beyond its rating of %s for %q%s", bias.ShownPair(x.m.Polarity, x.cond.Name), x.m.Path,
-		show(x.value), show(x.limit), x.m.Model, conditionIn(x.m.Run, x.m.Context, x.sample))
+		show(x.value), show(x.limit), x.m.Model, conditionAt(x.m, x.sample))
 }
 
 // exceeds compares magnitudes: a limit holds in both directions.

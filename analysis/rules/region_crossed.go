@@ -67,10 +67,10 @@ func crossings(d *bias.Device) []bias.RegionSpan {
 func crossing(m part, spans []bias.RegionSpan) string {
 	from, to := spans[0], spans[1]
 	s := fmt.Sprintf("%s leaves %s for %s over the range: %s at %s, %s at %s", m.Path, from.Region, to.Region,
-		from.Region, m.Context.At(from.To), to.Region, m.Context.At(to.From))
+		from.Region, m.at(from.To), to.Region, m.at(to.From))
 	for _, more := range spans[2:] {
 		if more.Region != from.Region && more.Region != to.Region {
-			return s + fmt.Sprintf(", %s at %s", more.Region, m.Context.At(more.From))
+			return s + fmt.Sprintf(", %s at %s", more.Region, m.at(more.From))
 		}
 	}
 	return s

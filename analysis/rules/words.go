@@ -3,8 +3,6 @@ package rules
 import (
 	"fmt"
 	"strings"
-
-	"triodeck/analysis/bias"
 )
 
 // listed joins names for a sentence: "m1", "m1 and m2", "m1, m2 and 7 more".
@@ -55,6 +53,7 @@ func condition(mode, corner, at string) string {
 	return " (" + strings.Join(parts, ", ") + ")"
 }
 
-func conditionIn(run *bias.Run, c *bias.Context, sample int) string {
-	return condition(run.Mode, run.Corner, c.At(sample))
+// conditionAt is the condition of a MOSFET at one of its samples.
+func conditionAt(m part, sample int) string {
+	return condition(m.Run.Mode, m.Run.Corner, m.at(sample))
 }
