@@ -208,9 +208,29 @@ func encode(v any) string {
 type memory struct {
 	mu    sync.Mutex
 	files map[string]string
+	held  map[string]gate
+}
+
+// gate holds whoever reads a file until a test lets go.
+type gate struct{ entered, release chan struct{} }
+
+// hold has the reading of a path wait.
+func (m *memory) hold(path string) gate {
+	m.mu.Lock()
+	defer m.mu.Unlock()
+	g := gate{make(chan struct{}, 8), make(chan struct{})}
+	m.held = map[string]gate{path: g}
+	return g
 }
 
 func (m *memory) ReadFile(path string) ([]byte, error) {
+	m.mu.Lock()
+	g, held := m.held[path]
+	m.mu.Unlock()
+	if held {
+		g.entered <- struct{}{}
+		<-g.release
+	}
 	m.mu.Lock()
 	defer m.mu.Unlock()
 	if s, ok := m.files[path]; ok {

@@ -4,6 +4,7 @@ import (
 	"context"
 	"maps"
 	"reflect"
+	"runtime/debug"
 	"slices"
 	"sync"
 	"time"
@@ -124,7 +125,7 @@ func (d *diagnostics) handle(st *state) {
 // runs; anything else that does must not end the program that edits depend on.
 func (d *diagnostics) finish() {
 	if r := recover(); r != nil {
-		d.server.log.Error("the analysis panicked", "panic", r)
+		d.server.log.Error("the analysis panicked", "panic", r, "stack", string(debug.Stack()))
 	}
 	d.mu.Lock()
 	defer d.mu.Unlock()

@@ -15,7 +15,7 @@ func (s *server) Hover(ctx context.Context, p *protocol.HoverParams) (*protocol.
 		return nil, err
 	}
 	h := ide.Hover(ctx, q.deck(ctx), q.path, s.enc.offset(q.file, p.Position))
-	if h == nil {
+	if h == nil || ctx.Err() != nil {
 		return nil, ctx.Err()
 	}
 	r := s.enc.rangeOf(q.file, h.Span)

@@ -54,7 +54,8 @@ func Serve(ctx context.Context, in io.Reader, out io.Writer, opts Options) error
 		opts.started(s)
 	}
 	// Not the package's own server constructor: it gives up the order of messages.
-	conn.Go(ctx, protocol.CancelHandler(s.guard(protocol.ServerHandler(s, jsonrpc2.MethodNotFoundHandler))))
+	handler := protocol.CancelHandler(protocol.ServerHandler(s, jsonrpc2.MethodNotFoundHandler))
+	conn.Go(ctx, lasting(s.guard(handler)))
 	<-conn.Done()
 	s.diagnostics.stop()
 	if s.phase.Load() == exitedEarly {
@@ -89,18 +90,24 @@ func (codec) Unmarshal(data []byte, v any) error {
 // session is refused.
 func (s *server) guard(next jsonrpc2.Handler) jsonrpc2.Handler {
 	return func(ctx context.Context, req *jsonrpc2.Request) (result any, err error) {
-		method, call := req.Method(), req.IsCall()
+		call := req.IsCall()
 		defer func() {
+			// Asked for only now: a request that let the next one in has a name of
+			// its own from then on; the one before that lies in a buffer.
+			method := req.Method()
 			if r := recover(); r != nil {
 				s.log.Error("a handler panicked", "method", method, "panic", r, "stack", string(debug.Stack()))
 				result, err = nil, jsonrpc2.Errorf(jsonrpc2.InternalError, "%s failed: %v", method, r)
+			}
+			if call && errors.Is(err, context.Canceled) {
+				err = jsonrpc2.Errorf(jsonrpc2.Code(protocol.LSPErrorCodesRequestCancelled), "%s was cancelled", method)
 			}
 			if err != nil && !call {
 				s.log.Warn("a notification was not handled", "method", method, "error", err)
 				result, err = nil, nil
 			}
 		}()
-		if err := s.admits(method); err != nil {
+		if err := s.admits(req.Method()); err != nil {
 			return nil, err
 		}
 		return next(ctx, req)

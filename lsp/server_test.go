@@ -4,6 +4,7 @@ import (
 	"encoding/json"
 	"errors"
 	"fmt"
+	"slices"
 	"strings"
 	"testing"
 
@@ -226,10 +227,36 @@ func TestPanics(t *testing.T) {
 	c.idle()
 }
 
-// TestCancel cancels a request that waits for a slow analysis.
-func TestCancel(t *testing.T) {
+// TestCancelledRequest cancels a request whose file takes long to read.
+func TestCancelledRequest(t *testing.T) {
+	c := dial(t, nil)
+	c.initialize()
+	path := home("slow.sp")
+	c.files.write(path, smallDeck)
+	gate := c.files.hold(path)
+	id, answer := c.start("textDocument/hover", map[string]any{
+		"textDocument": map[string]any{"uri": uriOf(path)}, "position": map[string]any{"line": 1, "character": 0},
+	})
+	<-gate.entered
+	c.notify("$/cancelRequest", map[string]any{"id": id})
+	c.call("test/echo", nil)
+	close(gate.release)
+	if m := c.wait("hover", answer); m.Error == nil || m.Error.Code != -32800 {
+		t.Errorf("the cancelled hover answers %+v %s", m.Error, m.Result)
+	}
+	// The next one is answered: nothing of the cancellation is kept.
+	m := c.call("textDocument/hover", map[string]any{
+		"textDocument": map[string]any{"uri": uriOf(path)}, "position": map[string]any{"line": 1, "character": 0},
+	})
+	if m.Error != nil || !strings.Contains(string(m.Result), "deep triode") {
+		t.Errorf("the next hover answers %+v %s", m.Error, m.Result)
+	}
+}
+
+// TestSupersededPass has a slow pass overtaken by an edit.
+func TestSupersededPass(t *testing.T) {
 	entered, release := make(chan struct{}, 8), make(chan struct{})
-	slow := &analysis.Rule{Name: "slow", Text: "Waits.", Scope: analysis.PerDesign, Run: func(*analysis.Pass) {
+	slow := &analysis.Rule{Name: "slow", Text: "Waits.", Scope: analysis.PerDesign, Run: func(p *analysis.Pass) {
 		entered <- struct{}{}
 		<-release
 	}}
@@ -239,20 +266,26 @@ func TestCancel(t *testing.T) {
 	<-entered
 	// Queries are answered while a pass is stuck.
 	m := c.call("textDocument/hover", map[string]any{"textDocument": map[string]any{"uri": uriOf(home("a.sp"))}, "position": map[string]any{"line": 1, "character": 0}})
-	if m.Error != nil {
-		t.Errorf("hover beside a slow pass: %+v", m.Error)
+	if m.Error != nil || !strings.Contains(string(m.Result), "deep triode") {
+		t.Errorf("hover beside a slow pass: %+v %s", m.Error, m.Result)
 	}
-	// A newer text supersedes the pass: nothing of it is published.
 	c.notify("textDocument/didChange", map[string]any{
 		"textDocument":   map[string]any{"uri": uriOf(home("a.sp")), "version": 2},
 		"contentChanges": []any{map[string]any{"text": smallDeck + "* more\n"}},
 	})
 	c.call("test/echo", nil)
 	close(release)
+	// The first version is told once at once, by what the file says for itself;
+	// the pass over it, which ended late, tells nothing.
+	var versions []int
 	for _, n := range c.idle() {
 		var p struct{ Version int }
 		if err := json.Unmarshal(n.Params, &p); err != nil || n.Method != "textDocument/publishDiagnostics" {
 			t.Errorf("unexpected notice %s %s", n.Method, n.Params)
 		}
+		versions = append(versions, p.Version)
+	}
+	if !slices.Equal(versions, []int{1, 2}) {
+		t.Errorf("diagnostics came for the versions %v, want 1 and 2", versions)
 	}
 }

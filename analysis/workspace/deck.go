@@ -55,9 +55,13 @@ func (d *Deck) Design(ctx context.Context) *circuit.Design {
 // Bias is the deck's operating points. It is nil only if the context ended.
 func (d *Deck) Bias(ctx context.Context) *bias.Result {
 	return d.bias.get(ctx, func(ctx context.Context) *bias.Result {
+		design := d.Design(ctx)
+		if design == nil {
+			return nil
+		}
 		return bias.Analyse(ctx, func(o circuit.Options) *circuit.Design {
 			if o.Section == "" && len(o.Params) == 0 && len(o.Roots) == 0 {
-				return d.Design(ctx)
+				return design
 			}
 			return d.load(ctx, o)
 		})
