@@ -89,6 +89,9 @@ func (w *worker) compile(cell *circuit.Cell, d *circuit.Device, m float64) *comp
 	c.polarity = card.Polarity
 	g, reason := geometry(d, m)
 	c.geometry = g
+	if d.Size != nil {
+		c.notes = append(c.notes, d.Size.Notes...)
+	}
 	if reason != "" {
 		c.reason = reason
 		return c
@@ -125,19 +128,24 @@ func (w *worker) card(cell *circuit.Cell, d *circuit.Device, c *compiled) (mos.C
 		c.reason = fmt.Sprintf("model %q is not defined", d.Elem.Model.Text)
 		return mos.Card{}, false
 	}
-	if d.Model.Def == nil {
-		c.reason = fmt.Sprintf("model %q is given in bins, which are not picked", d.Elem.Model.Text)
-		return mos.Card{}, false
-	}
-	card := mos.Card{Name: d.Model.Def.Name, Polarity: mos.NMOS, Params: map[string]float64{}}
-	switch d.Model.Def.Type {
+	card := mos.Card{Polarity: mos.NMOS, Params: map[string]float64{}}
+	switch d.Model.Type() {
 	case "nmos":
 	case "pmos":
 		card.Polarity = mos.PMOS
 	default:
-		c.reason = fmt.Sprintf("model %q is of type %q, which is no MOSFET that is modelled here", d.Elem.Model.Text, d.Model.Def.Model.Type.Text)
+		c.reason = fmt.Sprintf("model %q is of type %q, which is no MOSFET that is modelled here", d.Elem.Model.Text, d.Model.Type())
 		return mos.Card{}, false
 	}
+	c.polarity = card.Polarity
+	if d.Model.Def == nil {
+		c.reason = fmt.Sprintf("no bin of model %q fits", d.Elem.Model.Text)
+		if d.Size != nil && d.Size.Reason != "" {
+			c.reason = d.Size.Reason
+		}
+		return mos.Card{}, false
+	}
+	card.Name = d.Model.Def.Name
 	for p, v := range d.Model.Params {
 		if v.Err != nil {
 			c.reason = fmt.Sprintf("parameter %q of model %q: %v", p, d.Elem.Model.Text, v.Err)

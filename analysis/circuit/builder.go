@@ -17,6 +17,7 @@ type builder struct {
 	passed map[string]map[string]Value // of instances, likewise
 	calls  map[call]*Cell
 	models map[*Model]bool // those looked at for errors
+	sizes  map[sizeKey]sized
 
 	// Devices, instances and node lists are cut from blocks: a deck has millions.
 	devices   []Device
@@ -38,6 +39,7 @@ func (b *builder) start() {
 	b.values = map[string]map[string]Value{}
 	b.passed = map[string]map[string]Value{}
 	b.models = map[*Model]bool{}
+	b.sizes = map[sizeKey]sized{}
 	b.calls = map[call]*Cell{}
 	c := b.cell
 	c.Nets = append(c.Nets, Net{Name: "0", Spelt: "0", Port: -1, Global: true, Place: c.Scope.Place})

@@ -38,6 +38,7 @@ type Options struct {
 	Params  map[string]string // overrides of top-level parameters, by folded name: an expression's text
 	Roots   []string          // folders to look for includes in, after the including file's own
 	TempC   *float64          // °C, in place of the deck's own temperature
+	Facts   Facts             // what no card tells
 }
 
 // Design is a root deck with everything that it reaches.
@@ -68,6 +69,8 @@ const (
 	ParamCycle                         // parameters that refer to each other in a circle
 	ParamUndefined                     // an expression names an unknown parameter
 	ParamInvalid                       // an expression that does not evaluate otherwise
+	BinMissing                         // a size that no bin of its model covers
+	BinOverlap                         // a size that several bins cover
 )
 
 // Problem is one cause found while loading.
@@ -102,6 +105,7 @@ type Scope struct {
 	bins   map[string][]*ModelDef
 	conds  []*Conditional
 	words  map[string]bool // see mentions
+	sole   bool            // see factNames
 }
 
 // Conditional is an `.if` in a subckt's body. Each cell chooses an arm by its
@@ -242,14 +246,17 @@ type Device struct {
 	Model  *Model           // nil if the form has none or it is undefined
 	Value  Value            // resistance, capacitance, DC of a source, gain, area of a junction
 	Params map[string]Value // by folded name; equal cards of a cell share one map
-	Scale  float64          // `.option scale`: multiplies bare geometry; 1 by default
+	Scale  float64          // `.option scale`: multiplies geometry; 1 by default
+	Size   *Size            // of a MOSFET; nil for other kinds
 }
 
 // Model is a model card with its parameters evaluated in the device's context.
 type Model struct {
 	Def    *ModelDef
-	Bins   []*ModelDef // the candidates `name.1 …` where the name has bins; Def is then nil until picked
+	Bins   []*ModelDef // all of `name.1 …` where the name has bins; Def is then the one picked, nil if none covers the device
 	Params map[string]Value
+
+	table *binTable // of Bins
 }
 
 // Instance is an X element of a cell.

@@ -38,6 +38,10 @@ func (b *builder) device(e *ElementAt, model *Model) {
 	if d.Kind == OtherKind && model != nil {
 		d.Kind = modelKinds[model.Type()]
 	}
+	if d.Kind == MOSFET {
+		b.size(e, d)
+		model = d.Model
+	}
 	d.Value = b.mainValue(e, d)
 	b.report(b.cell.Scope, d.Value.Err)
 	if len(b.values) > seen {

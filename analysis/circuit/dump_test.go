@@ -6,6 +6,7 @@ import (
 	"strings"
 
 	"triodeck/analysis/circuit"
+	"triodeck/analysis/quantity"
 	"triodeck/parser/source"
 )
 
@@ -42,6 +43,7 @@ var kindWords = map[circuit.ProblemKind]string{
 	circuit.SectionMissing: "section-missing", circuit.BlockUnclosed: "block-unclosed",
 	circuit.BlockStray: "block-stray", circuit.Recursion: "recursion", circuit.TooDeep: "too-deep",
 	circuit.ParamCycle: "param-cycle", circuit.ParamUndefined: "param-undefined", circuit.ParamInvalid: "param-invalid",
+	circuit.BinMissing: "bin-missing", circuit.BinOverlap: "bin-overlap",
 }
 
 // where is a place as path:line:column and the text there.
@@ -195,12 +197,20 @@ func dumpDevice(b *strings.Builder, c *circuit.Cell, d *circuit.Device) {
 		if m.Def != nil {
 			fmt.Fprintf(b, " %s", m.Def.Name)
 		}
-		for _, bin := range m.Bins {
-			fmt.Fprintf(b, " %s", bin.Name)
+		if len(m.Bins) > 0 {
+			fmt.Fprintf(b, " of %d bins", len(m.Bins))
 		}
 		writeValues(b, m.Params)
 	}
 	b.WriteByte('\n')
+	if s := d.Size; s != nil && (d.Scale != 1 || len(s.Notes) > 0) {
+		fmt.Fprintf(b, "    L %s W %s fingers %g\n", quantity.Digits(s.L, "m", 4), quantity.Digits(s.W, "m", 4), s.NF)
+	}
+	if s := d.Size; s != nil {
+		for _, note := range s.Notes {
+			fmt.Fprintf(b, "    note %s\n", note)
+		}
+	}
 }
 
 func dumpInstance(b *strings.Builder, c *circuit.Cell, x *circuit.Instance) {

@@ -25,6 +25,7 @@ type elaborator struct {
 	open       []*Scope // the cells being made, outermost first
 	elements   int
 	over       bool // a cap was met, and said
+	binless    bool // a MOSFET has no bin
 }
 
 // elaborate makes the main cell with its hierarchy, then the subckts of the root
@@ -153,6 +154,9 @@ func (el *elaborator) build(s *Scope, env *Env, key string) *Cell {
 		b.element(e)
 	}
 	b.finish()
+	if el.binless {
+		b.reportBinless()
+	}
 	return b.cell
 }
 

@@ -45,7 +45,7 @@ func (e *Env) binned(name string) *Model {
 	if len(bins) == 0 {
 		return nil
 	}
-	return e.keep(bins[0], true, &Model{Bins: bins})
+	return e.keep(bins[0], true, &Model{Bins: bins, table: &binTable{}})
 }
 
 // hasModel says whether model would find something, without evaluating it.

@@ -124,6 +124,7 @@ func (s *Scope) addSubckt(c *Scope) {
 // numbers, whatever that of the files, and a model that builds on another takes
 // its type.
 func (s *Scope) finish() {
+	s.sole = s.holdsOne()
 	for _, m := range s.models {
 		for at, steps := m, 0; m.Type == "" && at != nil && steps < maxBases; steps++ {
 			if at = at.base(); at != nil {
@@ -176,6 +177,28 @@ func (s *Scope) mentions(name string) bool {
 		s.Walk(func(in *Scope) { in.gatherWords(s.words) })
 	}
 	return s.words[name]
+}
+
+// factNames are the folded names under which facts speak of the device of a model:
+// the model's, and the subckt's where it holds one transistor.
+func (s *Scope) factNames(model string) []string {
+	names := []string{BaseName(parser.Fold(model))}
+	if s.sole {
+		names = append(names, s.Name)
+	}
+	return names
+}
+
+// holdsOne says whether a subckt has one element that may be a transistor.
+func (s *Scope) holdsOne() bool {
+	n := 0
+	for i := range s.Elements {
+		switch s.Elements[i].Letter {
+		case 'm', 'n', 'x':
+			n++
+		}
+	}
+	return n == 1 && s.Subckt != nil
 }
 
 func (s *Scope) gatherWords(into map[string]bool) {

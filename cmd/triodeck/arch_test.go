@@ -22,7 +22,7 @@ var layers = map[string]layer{
 	"parser":             {[]string{"parser/source"}, "syntax knows one file and no circuit"},
 	"analysis/quantity":  {nil, "writing numbers needs nothing else"},
 	"analysis/mos":       {nil, "device physics is a function of numbers"},
-	"analysis/circuit":   {[]string{"parser", "parser/source"}, "a design knows no voltages and no physics"},
+	"analysis/circuit":   {[]string{"analysis/quantity", "parser", "parser/source"}, "a design knows no voltages and no physics"},
 	"analysis/bias":      {[]string{"analysis/circuit", "analysis/mos", "analysis/quantity", "parser", "parser/source"}, "bias stands on the circuit and the physics"},
 	"analysis":           {[]string{"analysis/bias", "analysis/circuit", "analysis/mos", "analysis/quantity", "parser", "parser/source"}, "what a rule is does not depend on any rule"},
 	"analysis/report":    {[]string{"analysis", "analysis/circuit", "parser", "parser/source"}, "printing findings needs only findings"},

@@ -1,0 +1,61 @@
+package circuit
+
+// WidthMeaning says what the W of an instance line means where it has fingers.
+type WidthMeaning uint8
+
+// What W means.
+const (
+	WidthUnstated WidthMeaning = iota
+	WidthTotal                 // of all fingers together
+	WidthFinger                // of one finger
+)
+
+// Fact is what somebody states about models or subckts that no card tells.
+type Fact struct {
+	Pattern string       // folded name of a model, without its bin's number, or of a subckt; `*` and `?` allowed
+	Width   WidthMeaning // what W means
+	Bare    float64      // metres that a bare 1 stands for in W, L and the like: 1 or 1e-6; 0 if not stated
+	Pins    []int        // the terminal (0 drain, 1 gate, 2 source, 3 bulk) of each node of the line; nil if not stated
+	Class   string       // folded: what a device of that name is where no card can be read: nmos, pmos, r, c, d, ignore, …; "" if not stated
+	Fit     *FitFact
+	Access  map[string]float64 // rs, rd (Ω a side), rsw (Ω·µm a side)
+	Rating  map[string]float64 // the largest magnitude of vgs, vds, …
+	Source  string             // who says so
+}
+
+// FitFact is a stand-in for a model that cannot be read.
+type FitFact struct {
+	Type   string             // nmos or pmos
+	Params map[string]float64 // of a level-1 card, or of the level that it names
+}
+
+// Facts are facts in the order of their weight: the first that states a thing counts.
+type Facts []Fact
+
+// Find gives the first fact about one of the folded names that states what is
+// asked for; nil if there is none.
+func (f Facts) Find(names []string, states func(*Fact) bool) *Fact {
+	for i := range f {
+		if !states(&f[i]) {
+			continue
+		}
+		for _, name := range names {
+			if name != "" && Match(f[i].Pattern, name) {
+				return &f[i]
+			}
+		}
+	}
+	return nil
+}
+
+// BaseName is a model's name without the number of its bin: `nch.12` is `nch`.
+func BaseName(folded string) string {
+	if base, _, ok := binName(folded); ok {
+		return base
+	}
+	return folded
+}
+
+// FactNames are the folded names under which facts and annotations speak of a
+// device: its model's, and the subckt's where the device is the only one in it.
+func (c *Cell) FactNames(d *Device) []string { return c.Scope.factNames(d.Elem.Model.Text) }
