@@ -2,7 +2,6 @@ package bias
 
 import (
 	"fmt"
-	"strings"
 
 	"triodeck/analysis/circuit"
 	"triodeck/analysis/mos"
@@ -82,49 +81,65 @@ func (w *worker) compile(cell *circuit.Cell, d *circuit.Device, m float64) *comp
 	}
 	c := &compiled{polarity: mos.NMOS}
 	w.compiled[key] = c
-	card, ok := w.card(cell, d, c)
-	if !ok {
-		return c
-	}
-	c.polarity = card.Polarity
 	g, reason := geometry(d, m)
 	c.geometry = g
 	if d.Size != nil {
 		c.notes = append(c.notes, d.Size.Notes...)
 	}
-	if reason != "" {
-		c.reason = reason
-		return c
+	temp, badTemp := w.temperature(d)
+	if reason == "" {
+		reason = badTemp
 	}
-	w.access(cell, d, &c.geometry, c)
-	model, notes := mos.Compile(card, c.geometry, w.temperature(d))
-	for _, n := range notes {
-		if n.Fatal {
-			c.reason = n.Text
-			return c
+	if note := w.access(cell, d, &c.geometry); note != "" {
+		c.notes = append(c.notes, note)
+	}
+	if card, ok := w.card(cell, d, c); ok {
+		c.polarity = card.Polarity
+		if c.reason = reason; reason == "" {
+			c.use(card, temp)
 		}
 	}
-	c.model, c.kind = model, model.Level()
+	// What cannot be read, has no bin or is not modelled may have a stand-in.
+	if c.model == nil && reason == "" || d.Model != nil && d.Model.Def == nil {
+		if card, note, ok := w.standIn(cell, d); ok {
+			c.polarity, c.reason = card.Polarity, ""
+			c.notes = append(c.notes, note)
+			c.use(card, temp)
+		}
+	}
 	return c
 }
 
-// temperature is a device's own, in °C: `temp=`, else the run's plus `dtemp=`.
-func (w *worker) temperature(d *circuit.Device) float64 {
-	if t, ok := d.Params["temp"]; ok && t.Err == nil {
-		return t.V
+// use compiles a card for the geometry, or says why it cannot.
+func (c *compiled) use(card mos.Card, temp float64) {
+	model, notes := mos.Compile(card, c.geometry, temp)
+	for _, n := range notes {
+		if n.Fatal {
+			c.reason = n.Text
+			return
+		}
 	}
-	return w.run.TempC + d.Params["dtemp"].V
+	c.model, c.kind = model, model.Level()
 }
 
-// card gives the model card as numbers, the corner's shifts applied, or a square
-// law stand-in where the writer has fitted one.
-func (w *worker) card(cell *circuit.Cell, d *circuit.Device, c *compiled) (mos.Card, bool) {
-	name := fold(d.Elem.Model)
-	if d.Model == nil || (d.Model.Def == nil && len(d.Model.Bins) == 0) {
-		if fit := w.fitFor(cell, name); fit != nil {
-			c.notes = append(c.notes, "a stand-in: the numbers come from the fit, not from a model card")
-			return w.tweaked(fitCard(cell, fit)), true
+// temperature is a device's own, in °C: `temp=`, else the run's plus `dtemp=`.
+// The string says why it is not known.
+func (w *worker) temperature(d *circuit.Device) (float64, string) {
+	if t, ok := d.Params["temp"]; ok {
+		if t.Err != nil {
+			return 0, fmt.Sprintf("temp: %v", t.Err)
 		}
+		return t.V, ""
+	}
+	if t := d.Params["dtemp"]; t.Err != nil {
+		return 0, fmt.Sprintf("dtemp: %v", t.Err)
+	}
+	return w.run.TempC + d.Params["dtemp"].V, ""
+}
+
+// card gives the model card as numbers, the corner's shifts applied.
+func (w *worker) card(cell *circuit.Cell, d *circuit.Device, c *compiled) (mos.Card, bool) {
+	if d.Model == nil || (d.Model.Def == nil && len(d.Model.Bins) == 0) {
 		c.reason = fmt.Sprintf("model %q is not defined", d.Elem.Model.Text)
 		return mos.Card{}, false
 	}
@@ -183,56 +198,4 @@ func (w *worker) tweaked(card mos.Card) mos.Card {
 		}
 	}
 	return card
-}
-
-// fitFor finds the writer's stand-in for a model, the nearest scope first.
-func (w *worker) fitFor(cell *circuit.Cell, model string) *fitAt {
-	for s := cell.Scope; s != nil; s = s.Parent {
-		for i, f := range w.statements(s).fits {
-			if Match(fold(f.Fit.Model), model) {
-				return &w.statements(s).fits[i]
-			}
-		}
-	}
-	return nil
-}
-
-func fitCard(cell *circuit.Cell, f *fitAt) mos.Card {
-	card := mos.Card{Name: fold(f.Fit.Model), Polarity: mos.NMOS, Params: map[string]float64{}}
-	if strings.HasPrefix(fold(f.Type), "p") {
-		card.Polarity = mos.PMOS
-	}
-	for _, p := range f.Params {
-		if v := cell.Env.Value(p.Value); v.Err == nil {
-			card.Params[fold(p.Name)] = v.V
-		}
-	}
-	return card
-}
-
-// access adds the resistance that an annotation states outside the card.
-func (w *worker) access(cell *circuit.Cell, d *circuit.Device, g *mos.Geometry, c *compiled) {
-	for s := cell.Scope; s != nil; s = s.Parent {
-		for _, a := range w.statements(s).access {
-			if !Match(fold(a.Access.Model), fold(d.Elem.Model)) {
-				continue
-			}
-			for _, p := range a.Params {
-				v := cell.Env.Value(p.Value)
-				if v.Err != nil {
-					continue
-				}
-				switch fold(p.Name) {
-				case "rs":
-					g.RS = v.V
-				case "rd":
-					g.RD = v.V
-				case "rsw": // ohm·µm a side
-					g.RS, g.RD = v.V*1e-6/g.W, v.V*1e-6/g.W
-				}
-			}
-			c.notes = append(c.notes, "access resistance included")
-			return
-		}
-	}
 }
