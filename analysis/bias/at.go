@@ -22,7 +22,7 @@ func (c *Context) atNets(sample int, nets []circuit.NetID) string {
 	if len(c.Axes) < 2 {
 		return c.At(sample)
 	}
-	return c.at(sample, func(axis int) bool { return c.moves(axis, nets) })
+	return c.at(sample, func(axis int) bool { return c.Moves(axis, nets) })
 }
 
 func (c *Context) at(sample int, take func(axis int) bool) string {
@@ -35,9 +35,9 @@ func (c *Context) at(sample int, take func(axis int) bool) string {
 	return strings.Join(parts, ", ")
 }
 
-// moves says whether a net changes between two samples that differ in the axis
+// Moves says whether a net changes between two samples that differ in the axis
 // alone; where no two samples do, the axis is taken to matter.
-func (c *Context) moves(axis int, nets []circuit.NetID) bool {
+func (c *Context) Moves(axis int, nets []circuit.NetID) bool {
 	first := map[string]int{} // the other axes' values, to a sample that has them
 	compared := false
 	for s := range c.Samples {

@@ -1,7 +1,9 @@
 package bias
 
 import (
+	"maps"
 	"math"
+	"slices"
 	"strings"
 
 	"triodeck/analysis/mos"
@@ -146,3 +148,12 @@ func (d *Device) Regions() []RegionSpan {
 	}
 	return out
 }
+
+// Known says whether a quantity of that name exists.
+func Known(name string) bool {
+	_, ok := quantities[Canonical(name)]
+	return ok
+}
+
+// Quantities lists the names that annotations may use, sorted.
+func Quantities() []string { return slices.Sorted(maps.Keys(quantities)) }

@@ -25,12 +25,13 @@ var layers = map[string]layer{
 	"analysis/circuit":   {[]string{"analysis/quantity", "parser", "parser/source"}, "a design knows no voltages and no physics"},
 	"analysis/bias":      {[]string{"analysis/circuit", "analysis/mos", "analysis/quantity", "parser", "parser/source"}, "bias stands on the circuit and the physics"},
 	"analysis":           {[]string{"analysis/bias", "analysis/circuit", "analysis/mos", "analysis/quantity", "parser", "parser/source"}, "what a rule is does not depend on any rule"},
+	"analysis/curve":     {[]string{"analysis/bias", "analysis/circuit"}, "a curve is taken out of a result"},
 	"analysis/report":    {[]string{"analysis", "analysis/circuit", "parser", "parser/source"}, "printing findings needs only findings"},
 	"analysis/rules":     {[]string{"analysis", "analysis/bias", "analysis/circuit", "analysis/mos", "analysis/quantity", "parser", "parser/source"}, "a rule sees the pass and what lies below it"},
 	"analysis/workspace": {[]string{"analysis", "analysis/bias", "analysis/circuit", "analysis/report", "parser", "parser/source"}, "a snapshot is handed its rules"},
 	"analysis/ide":       {[]string{"analysis", "analysis/bias", "analysis/circuit", "analysis/mos", "analysis/quantity", "analysis/workspace", "parser", "parser/source"}, "features speak in byte offsets and plain structs"},
 	"lsp":                {[]string{"analysis", "analysis/circuit", "analysis/ide", "analysis/rules", "analysis/workspace", "parser", "parser/source"}, "the server converts and dispatches"},
-	"cmd/triodeck":       {[]string{"analysis", "analysis/bias", "analysis/circuit", "analysis/mos", "analysis/quantity", "analysis/report", "analysis/rules", "analysis/workspace", "lsp", "parser"}, "commands stand on everything"},
+	"cmd/triodeck":       {[]string{"analysis", "analysis/bias", "analysis/circuit", "analysis/curve", "analysis/mos", "analysis/quantity", "analysis/report", "analysis/rules", "analysis/workspace", "lsp", "parser"}, "commands stand on everything"},
 }
 
 // only lists modules that one package alone may import.
@@ -38,6 +39,7 @@ var only = map[string]string{
 	"github.com/alecthomas/participle/": "parser",
 	"go.lsp.dev/":                       "lsp",
 	"gonum.org/v1/gonum/":               "analysis/bias",
+	"gonum.org/v1/plot":                 "cmd/triodeck",
 	"github.com/alecthomas/kong":        "cmd/triodeck",
 }
 

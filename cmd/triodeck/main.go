@@ -25,6 +25,7 @@ const (
 type commands struct {
 	Lint  lintCmd  `cmd:"" help:"Check decks and folders of decks; print findings."`
 	Op    opCmd    `cmd:"" help:"Show every MOSFET of a deck: region, bias, margins, on-resistance."`
+	Curve curveCmd `cmd:"" help:"Draw a quantity of a MOSFET along a ranged node, in the terminal or as a picture."`
 	Rules rulesCmd `cmd:"" help:"List the rules, or explain one with its examples."`
 	Lsp   lspCmd   `cmd:"" help:"Run the language server on standard input and output."`
 

@@ -4,9 +4,7 @@ import (
 	"encoding/csv"
 	"fmt"
 	"io"
-	"math"
 	"slices"
-	"strconv"
 	"strings"
 	"text/tabwriter"
 
@@ -119,17 +117,11 @@ func (r opReport) csv(w io.Writer) error {
 }
 
 func (a amount) csv() string {
-	num := func(v float64) string {
-		if math.IsInf(v, 1) {
-			return "inf"
-		}
-		return strconv.FormatFloat(significant(v), 'g', -1, 64)
-	}
 	switch {
 	case !a.known:
 		return ""
 	case a.flat():
-		return num(a.min)
+		return csvNumber(a.min)
 	}
-	return num(a.min) + ".." + num(a.max)
+	return csvNumber(a.min) + ".." + csvNumber(a.max)
 }
