@@ -42,7 +42,7 @@ func (c *curveCmd) Run(ctx context.Context, s streams) error {
 	if c.Out == "" {
 		return plotTerminal(s.out, drawn)
 	}
-	return writeFile(c.Out, func(f *os.File) error { return write(f, drawn) })
+	return writeFile(c.Out, 0o644, func(f *os.File) error { return write(f, drawn) })
 }
 
 // writer picks what writes the file by its ending.
@@ -56,27 +56,6 @@ func (c *curveCmd) writer() (func(*os.File, *curve.Curve) error, error) {
 		return func(f *os.File, drawn *curve.Curve) error { return curveCSV(f, drawn) }, nil
 	}
 	return nil, fmt.Errorf("--out %s: the name must end in .svg, .png or .csv", c.Out)
-}
-
-// writeFile creates a file whole: what fails leaves nothing behind.
-func writeFile(path string, write func(*os.File) error) error {
-	f, err := os.CreateTemp(filepath.Dir(path), ".triodeck-*")
-	if err != nil {
-		return err
-	}
-	defer os.Remove(f.Name())
-	if err := write(f); err != nil {
-		f.Close()
-		return err
-	}
-	if err := f.Chmod(0o644); err != nil {
-		f.Close()
-		return err
-	}
-	if err := f.Close(); err != nil {
-		return err
-	}
-	return os.Rename(f.Name(), path)
 }
 
 func nonEmpty(s string) []string {

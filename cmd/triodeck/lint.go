@@ -2,6 +2,7 @@ package main
 
 import (
 	"context"
+	"errors"
 	"fmt"
 	"os"
 	"time"
@@ -14,19 +15,34 @@ import (
 
 type lintCmd struct {
 	Paths  []string `arg:"" optional:"" help:"Decks, and folders to look for decks in (default: the working folder)."`
-	Format string   `help:"text or json." enum:"text,json" default:"text"`
+	Format string   `help:"text, json or sarif." enum:"text,json,sarif" default:"text"`
 	FailOn string   `help:"Exit with 1 at this severity or above: error, warning or note." enum:"error,warning,note" default:"error"`
+	Apply  bool     `help:"Write the edits that are certain, then report what is left."`
+	Also   []string `help:"With --apply: write this rule's edits too where they are not certain." placeholder:"RULE"`
 }
 
+// rounds bounds how often --apply looks again: an edit may uncover another.
+const rounds = 8
+
 func (c *lintCmd) Run(ctx context.Context, s streams) error {
-	paths := c.Paths
-	if len(paths) == 0 {
-		paths = []string{"."}
+	if err := c.check(); err != nil {
+		return err
 	}
 	start := time.Now()
-	bar := newProgress(s.err)
-	findings, sum, err := workspace.New(workspace.OS()).Lint(ctx, paths, rules.All, bar.update)
-	bar.done()
+	findings, sum, err := c.lint(ctx, s)
+	for round := 0; c.Apply && round < rounds; round++ {
+		done, applyErr := writeMends(mends(findings, c.Also))
+		for _, m := range done {
+			fmt.Fprintf(s.err, "%s:%d: written: %s [%s]\n", m.doc.Path, m.at, m.edit.Title, m.rule)
+		}
+		if applyErr != nil {
+			return applyErr
+		}
+		if len(done) == 0 {
+			break
+		}
+		findings, sum, err = c.lint(ctx, s)
+	}
 	if err != nil {
 		fmt.Fprintf(s.err, "triodeck: %v\n", err)
 	}
@@ -42,14 +58,39 @@ func (c *lintCmd) Run(ctx context.Context, s streams) error {
 	return nil
 }
 
+func (c *lintCmd) check() error {
+	if len(c.Also) > 0 && !c.Apply {
+		return errors.New("--also goes with --apply")
+	}
+	for _, name := range c.Also {
+		if rules.ByName(name) == nil {
+			return fmt.Errorf("--also: there is no rule %q; 'triodeck rules' lists them", name)
+		}
+	}
+	return nil
+}
+
+func (c *lintCmd) lint(ctx context.Context, s streams) ([]analysis.Finding, report.Summary, error) {
+	paths := c.Paths
+	if len(paths) == 0 {
+		paths = []string{"."}
+	}
+	bar := newProgress(s.err)
+	defer bar.done()
+	return workspace.New(workspace.OS()).Lint(ctx, paths, rules.All, bar.update)
+}
+
 func (c *lintCmd) print(s streams, findings []analysis.Finding, sum report.Summary, took time.Duration) error {
 	folder, err := os.Getwd()
 	if err != nil {
 		folder = ""
 	}
 	shown := report.Relative(folder)
-	if c.Format == "json" {
+	switch c.Format {
+	case "json":
 		return report.JSON(s.out, findings, sum, shown)
+	case "sarif":
+		return report.SARIF(s.out, findings, report.SARIFOptions{Path: shown, Version: version(), Rules: rules.All})
 	}
 	terminal := isTerminal(s.out)
 	opt := report.TextOptions{Path: shown, Source: terminal}
