@@ -24,6 +24,7 @@ var layers = map[string]layer{
 	"analysis/mos":       {nil, "device physics is a function of numbers"},
 	"analysis/circuit":   {[]string{"analysis/quantity", "parser", "parser/source"}, "a design knows no voltages and no physics"},
 	"analysis/bias":      {[]string{"analysis/circuit", "analysis/mos", "analysis/quantity", "parser", "parser/source"}, "bias stands on the circuit and the physics"},
+	"analysis/settings":  {[]string{"analysis/circuit", "analysis/mos", "parser", "parser/source"}, "settings are facts about circuits, read from a text"},
 	"analysis":           {[]string{"analysis/bias", "analysis/circuit", "analysis/mos", "analysis/quantity", "parser", "parser/source"}, "what a rule is does not depend on any rule"},
 	"analysis/curve":     {[]string{"analysis/bias", "analysis/circuit"}, "a curve is taken out of a result"},
 	"analysis/report":    {[]string{"analysis", "analysis/circuit", "parser", "parser/source"}, "printing findings needs only findings"},
@@ -41,6 +42,7 @@ var only = map[string]string{
 	"gonum.org/v1/gonum/":               "analysis/bias",
 	"gonum.org/v1/plot":                 "cmd/triodeck",
 	"github.com/alecthomas/kong":        "cmd/triodeck",
+	"github.com/pelletier/go-toml/":     "analysis/settings",
 	"github.com/owenrumney/go-sarif/":   "analysis/report",
 }
 
