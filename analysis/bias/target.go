@@ -132,6 +132,9 @@ func (a *analyser) noTarget(c *Context, n circuit.NoteAt, e *parser.Expect) {
 	w := e.Target
 	place := placeOf(n, n.Span.Start, n.Span.End)
 	if w.IsZero() {
+		if n.Subject == nil {
+			return // the element's card was not understood, which is told
+		}
 		w = n.Subject.Name
 	} else {
 		place = placeOf(n, w.Start, w.Span().End)

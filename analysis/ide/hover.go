@@ -88,7 +88,11 @@ func (q query) hoverElement(card int, e *parser.Element) string {
 // hoverPath tells where a file of an include lies.
 func (q query) hoverPath(m mark) string {
 	if d := q.included(m.text); d != nil {
-		return fmt.Sprintf("%s: %d lines", code(d.Path), d.File.Lines().Lines())
+		n := strings.Count(d.File.Src, "\n")
+		if !strings.HasSuffix(d.File.Src, "\n") && d.File.Src != "" {
+			n++
+		}
+		return fmt.Sprintf("%s: %d %s", code(d.Path), n, plural(n, "line"))
 	}
 	return code(m.text) + ": not found or not readable"
 }
@@ -133,4 +137,17 @@ func code(s string) string {
 		return "`` " + s + " ``"
 	}
 	return "`" + s + "`"
+}
+
+// name sets a name as it is where markdown reads nothing into it, else as code.
+func name(s string) string {
+	for i, r := range s {
+		inside := i > 0 && i < len(s)-1
+		switch {
+		case r >= 'a' && r <= 'z', r >= 'A' && r <= 'Z', r >= '0' && r <= '9', inside && strings.ContainsRune("_.-", r):
+		default:
+			return code(s)
+		}
+	}
+	return s
 }

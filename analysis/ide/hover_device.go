@@ -2,18 +2,19 @@ package ide
 
 import (
 	"fmt"
-	"math"
 	"slices"
 	"strings"
 
 	"triodeck/analysis/bias"
-	"triodeck/analysis/mos"
-	"triodeck/analysis/quantity"
 	"triodeck/parser"
 )
 
-// maxInstances is how many instances of a subckt a hover shows.
-const maxInstances = 6
+// maxInstances is how many instances of a subckt a hover shows, maxRows how many
+// rows of them before the corners share one.
+const (
+	maxInstances = 6
+	maxRows      = 16
+)
 
 // hoverDevice tells a MOSFET's region, resistance and bias in every mode.
 func (q query) hoverDevice(card int, e *parser.Element) string {
@@ -65,14 +66,16 @@ func capped(ops []operation) (shown []operation, left int) {
 
 // deviceHead is the line that says what the device is.
 func deviceHead(e *parser.Element, d *bias.Device) string {
-	head := "**" + escape(e.Name.Text) + "**"
+	head := code(e.Name.Text)
+	if d != nil && (d.Reason == "" || d.ModelKind != "") {
+		head += " · " + strings.ToUpper(d.Polarity.String())
+	}
 	if !e.Model.IsZero() {
 		head += " · " + code(e.Model.Text)
 	}
 	if d == nil || d.Reason != "" && d.ModelKind == "" {
 		return head
 	}
-	head += " · " + strings.ToUpper(d.Polarity.String())
 	if d.ModelKind != "" {
 		head += ", " + d.ModelKind
 	}
@@ -86,26 +89,37 @@ func deviceHead(e *parser.Element, d *bias.Device) string {
 	return head
 }
 
-// escape keeps a name from being read as markdown.
-func escape(s string) string {
-	return strings.NewReplacer("\\", "\\\\", "*", "\\*", "_", "\\_", "`", "\\`", "<", "\\<", "[", "\\[").Replace(s)
-}
-
+// operatingTable has a row for each instance, mode and corner; with too many
+// corners for that, their extremes share a row.
 func operatingTable(ops []operation) *table {
-	t := &table{head: []string{"instance", "mode", "region", "Ron", "gds", "Vov", "margin", "Id", "bias"}}
+	t := &table{head: []string{"instance", "mode", "corner", "region", "Ron", "gds", "Vov", "margin", "Id"}}
+	rows := 0
 	for _, o := range ops {
-		path, mode := "", ""
-		if o.path != "" && severalPaths(ops) {
-			path = escape(o.path)
+		rows += len(o.parts)
+	}
+	for _, o := range ops {
+		path, mode := "", name(o.mode)
+		if severalPaths(ops) {
+			path = name(o.path)
 		}
-		if mode = escape(o.mode); mode == "" && severalModes(ops) {
+		if mode == "" && severalModes(ops) {
 			mode = "–"
 		}
-		if len(o.evaluated()) == 0 {
-			t.add(path, mode, "not evaluated", "", "", "", "", "", wanted(o))
-			continue
+		list := []operation{o}
+		if rows <= maxRows {
+			list = o.split()
 		}
-		t.add(path, mode, o.regions(), o.value("ron"), o.value("gds"), o.value("vov"), o.value("margin"), o.value("id"), o.pairs())
+		for _, c := range list {
+			corner := ""
+			if len(c.parts) < len(o.parts) {
+				corner = name(cornerName(c.parts[0].corner))
+			}
+			if len(c.evaluated()) == 0 {
+				t.add(path, mode, corner, "not evaluated", "", "", "", "", "")
+				continue
+			}
+			t.add(path, mode, corner, c.regions(), c.value("ron"), c.value("gds"), c.value("vov"), c.value("margin"), c.value("id"))
+		}
 	}
 	return t
 }
@@ -116,17 +130,6 @@ func severalPaths(ops []operation) bool {
 
 func severalModes(ops []operation) bool {
 	return slices.ContainsFunc(ops, func(o operation) bool { return o.mode != ops[0].mode })
-}
-
-// pairs are the terminal voltages, in the conducting direction, under the names
-// that the polarity is spoken of with.
-func (o operation) pairs() string {
-	polarity := o.evaluated()[0].Polarity
-	var texts []string
-	for _, name := range []string{"vgs", "vds", "vbs"} {
-		texts = append(texts, bias.ShownPair(polarity, name)+" "+o.value(name))
-	}
-	return strings.Join(texts, ", ")
 }
 
 // wanted says what an operation lacks, in a few words.
@@ -153,139 +156,11 @@ func notEvaluated(ops []operation) string {
 			text = "no operating point"
 		}
 		if severalModes(ops) && o.mode != "" {
-			text += " in mode " + escape(o.mode)
+			text += " in mode " + name(o.mode)
 		}
 		if !slices.Contains(texts, text) {
 			texts = append(texts, text)
 		}
 	}
 	return "Not evaluated: " + strings.Join(texts, "; ") + ".\n"
-}
-
-// remarks are the lines under the table: where the extremes lie, how far the
-// small-Vds law holds, where the voltages come from, and what else to know.
-func remarks(ops []operation) []string {
-	var lines []string
-	for _, o := range ops {
-		lines = append(lines, o.named(ops, append(o.turns(), o.worst(), o.law())...)...)
-	}
-	lines = append(lines, origins(ops)...)
-	for _, o := range ops {
-		for _, p := range o.parts {
-			for _, note := range p.Notes {
-				if !slices.Contains(lines, note) {
-					lines = append(lines, note)
-				}
-			}
-		}
-	}
-	return lines
-}
-
-// named puts the instance and mode before texts, where there are several.
-func (o operation) named(all []operation, texts ...string) []string {
-	prefix := ""
-	if severalPaths(all) {
-		prefix = escape(o.path)
-	}
-	if severalModes(all) {
-		prefix = joined(" ", prefix, escape(o.mode))
-	}
-	var out []string
-	for _, t := range texts {
-		if t != "" {
-			out = append(out, joined(": ", prefix, t))
-		}
-	}
-	return out
-}
-
-// turns tells where over its range the device changes region.
-func (o operation) turns() []string {
-	var out []string
-	for _, p := range o.evaluated() {
-		spans := p.Regions()
-		if len(spans) < 2 || p.context.At(0) == "" {
-			continue
-		}
-		var texts []string
-		for _, r := range spans[:min(len(spans), 4)] {
-			texts = append(texts, fmt.Sprintf("%s from %s", r.Region, p.context.AtDevice(p.Device, r.From)))
-		}
-		if len(spans) > 4 {
-			texts = append(texts, "…")
-		}
-		text := strings.Join(texts, ", ")
-		if len(o.parts) > 1 {
-			text = cornerName(p.corner) + ": " + text
-		}
-		out = append(out, text)
-	}
-	return out
-}
-
-// worst tells where Ron is lowest and highest, for a device that conducts.
-func (o operation) worst() string {
-	lo, hi, ok := o.bounds("ron")
-	if !ok || lo.at == hi.at || lo.v == hi.v || math.IsInf(lo.v, 1) {
-		return ""
-	}
-	return fmt.Sprintf("Ron %s at %s, %s at %s", quantity.Format(lo.v, "Ω"), lo.at, quantity.Format(hi.v, "Ω"), hi.at)
-}
-
-// law compares Ron with the small-Vds law of the square-law channel,
-// 1/(k·Vov) (Shichman & Hodges 1968), wherever the device is in triode.
-func (o operation) law() string {
-	lo, hi, off := math.Inf(1), 0.0, 0.0
-	for _, p := range o.evaluated() {
-		for s, pt := range p.Points {
-			r := p.Verdicts[s].Region
-			if r != mos.Triode && r != mos.DeepTriode || math.IsInf(pt.Ron0, 0) || math.IsInf(pt.Ron, 0) {
-				continue
-			}
-			lo, hi = extremes(lo, hi, pt.Ron0)
-			if d := pt.Ron/pt.Ron0 - 1; math.Abs(d) > math.Abs(off) {
-				off = d
-			}
-		}
-	}
-	if hi == 0 {
-		return ""
-	}
-	text := fmt.Sprintf("small-Vds law 1/(k·Vov) %s; the chord Ron is ", spread(lo, hi, "Ω"))
-	if lo != hi {
-		text += "up to "
-	}
-	if off < 0 {
-		return text + fmt.Sprintf("%.2g %% below it", -100*off)
-	}
-	return text + fmt.Sprintf("%.2g %% above it", 100*off)
-}
-
-// origins tells how the voltages are known: one line, or one a mode where they
-// differ.
-func origins(ops []operation) []string {
-	var lines []string
-	source := func(o operation) string {
-		weakest := bias.Annotated
-		for _, p := range o.parts {
-			weakest = min(weakest, p.Source)
-		}
-		text := "voltages " + weakest.String()
-		if weakest > bias.Unknown && weakest < bias.Annotated {
-			text = "voltages " + weakest.String() + " or better"
-		}
-		if o.parts[0].context.Alone {
-			text += ", the subckt taken alone"
-		}
-		return text
-	}
-	same := !slices.ContainsFunc(ops, func(o operation) bool { return source(o) != source(ops[0]) })
-	for _, o := range ops {
-		if same {
-			return []string{source(o)}
-		}
-		lines = append(lines, o.named(ops, source(o))...)
-	}
-	return lines
 }

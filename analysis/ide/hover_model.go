@@ -21,7 +21,7 @@ func (q query) hoverModel(p place, name string) string {
 	defs := scope.FindModel(folded)
 	if len(defs) == 0 {
 		if bins := scope.FindBins(folded); len(bins) > 0 {
-			return fmt.Sprintf("**%s** · %d bins · first defined at %s", escape(name), len(bins), where(bins[0].Place))
+			return fmt.Sprintf("%s · %d bins · first defined at %s", code(name), len(bins), where(bins[0].Place))
 		}
 		if scope.FindSubckt(folded) != nil {
 			return q.hoverSubckt(p, name)
@@ -30,7 +30,7 @@ func (q query) hoverModel(p place, name string) string {
 	}
 	def := defs[len(defs)-1]
 	var b strings.Builder
-	fmt.Fprintf(&b, "**%s** · %s model", escape(def.Model.Name.Text), strings.ToUpper(def.Model.Type.Text))
+	fmt.Fprintf(&b, "%s · %s model", code(def.Model.Name.Text), strings.ToUpper(def.Model.Type.Text))
 	values := q.modelValues(def)
 	if level, ok := values["level"]; ok {
 		fmt.Fprintf(&b, ", level %s", level)
@@ -135,7 +135,7 @@ func (q query) hoverSubckt(p place, name string) string {
 		return ""
 	}
 	var b strings.Builder
-	fmt.Fprintf(&b, "**%s** · subckt · defined at %s\n\n", escape(def.Subckt.Name.Text), where(def.Place))
+	fmt.Fprintf(&b, "%s · subckt · defined at %s\n\n", code(def.Subckt.Name.Text), where(def.Place))
 	var ports, params []string
 	for _, w := range def.Ports {
 		ports = append(ports, code(w.Text))
@@ -168,5 +168,5 @@ func (q query) hoverInstance(card int, e *parser.Element) string {
 	if e.Model.IsZero() {
 		return ""
 	}
-	return q.hoverSubckt(place{card: card}, e.Model.Text)
+	return q.hoverSubckt(place{card: card, Card: q.doc.File.Card(card)}, e.Model.Text)
 }

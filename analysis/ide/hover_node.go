@@ -16,33 +16,36 @@ const maxPins = 12
 
 // hoverNode tells a node's voltage in every mode, where it comes from, and what
 // hangs on it.
-func (q query) hoverNode(p place, name string) string {
-	levels := q.nodeLevels(p, name)
+func (q query) hoverNode(p place, node string) string {
+	levels := q.nodeLevels(p, node)
 	if len(levels) == 0 {
 		return ""
 	}
+	several := slices.ContainsFunc(levels, func(l level) bool { return l.path != levels[0].path })
 	t := &table{head: []string{"instance", "mode", "voltage", "from"}}
-	several, modes := false, false
-	for _, l := range levels {
-		several = several || l.path != levels[0].path
-		modes = modes || l.mode != ""
-	}
-	paths := map[string]bool{}
-	for _, l := range levels {
-		if paths[l.path] = true; len(paths) > maxInstances {
+	for i, rows := range byInstance(levels) {
+		if i == maxInstances {
 			break
 		}
-		path, mode := "", ""
+		path := ""
 		if several {
-			path = escape(l.path)
+			path = name(rows[0].path)
 		}
-		if modes {
-			mode = escape(l.mode)
+		differ := slices.ContainsFunc(rows, func(l level) bool { return l.text() != rows[0].text() || l.from() != rows[0].from() })
+		if !differ && len(rows) > 1 {
+			t.add(path, "every", rows[0].text(), rows[0].from())
+			continue
 		}
-		t.add(path, mode, l.text(), l.from())
+		for _, l := range rows {
+			t.add(path, name(l.mode), l.text(), l.from())
+		}
 	}
 	cell, net := levels[0].context.Cell, levels[0].net
-	title := "**" + code("v("+cell.Nets[net].Spelt+")") + "**"
+	spelt := cell.Nets[net].Spelt
+	if strings.Contains(node, ".") {
+		spelt = node // through instances
+	}
+	title := code("v(" + spelt + ")")
 	switch n := cell.Nets[net]; {
 	case net == circuit.Ground:
 		title += " · ground"
@@ -52,6 +55,20 @@ func (q query) hoverNode(p place, name string) string {
 		title += " · global"
 	}
 	return title + "\n\n" + t.String() + "\n" + hanging(cell, net)
+}
+
+// byInstance groups levels by instance, in the order of their first mention.
+func byInstance(levels []level) [][]level {
+	var groups [][]level
+	for _, l := range levels {
+		i := slices.IndexFunc(groups, func(g []level) bool { return g[0].path == l.path })
+		if i < 0 {
+			i = len(groups)
+			groups = append(groups, nil)
+		}
+		groups[i] = append(groups[i], l)
+	}
+	return groups
 }
 
 // level is a node's voltage in one mode, as one instance sees it, over corners
@@ -65,14 +82,13 @@ type level struct {
 	source     bias.Voltage // of the first corner
 }
 
-func (q query) nodeLevels(p place, name string) []level {
+func (q query) nodeLevels(p place, node string) []level {
 	var out []level
 	for _, s := range sightings(q.deck.Bias(q.ctx), q.body(p.card)) {
-		cell, net, context, ok := nodeIn(s.context, parser.Fold(name))
+		net, context, ok := nodeIn(s.context, parser.Fold(node))
 		if !ok {
 			continue
 		}
-		_ = cell
 		v := context.Nodes[net]
 		i := slices.IndexFunc(out, func(l level) bool { return l.path == s.path && l.mode == s.run.Mode })
 		if i < 0 {
@@ -89,18 +105,18 @@ func (q query) nodeLevels(p place, name string) []level {
 
 // nodeIn finds a node by its name in a context, through instances if the name
 // has dots.
-func nodeIn(c *bias.Context, name string) (*circuit.Cell, circuit.NetID, *bias.Context, bool) {
+func nodeIn(c *bias.Context, name string) (circuit.NetID, *bias.Context, bool) {
 	for {
 		if net, ok := c.Cell.NetByName(name); ok {
-			return c.Cell, net, c, true
+			return net, c, true
 		}
 		head, rest, ok := strings.Cut(name, ".")
 		if !ok {
-			return nil, 0, nil, false
+			return 0, nil, false
 		}
 		i := slices.IndexFunc(c.Children, func(ch bias.Child) bool { return ch.Instance.Name == head })
 		if i < 0 || c.Children[i].Context == nil {
-			return nil, 0, nil, false
+			return 0, nil, false
 		}
 		c, name = c.Children[i].Context, rest
 	}
@@ -117,14 +133,7 @@ func (l level) from() string {
 	if !l.known {
 		return "annotate it: " + code("*@ bias v("+l.context.Cell.Nets[l.net].Spelt+")=…")
 	}
-	text := l.source.Why
-	if text == "" {
-		text = l.source.Source.String()
-	}
-	if at := where(l.source.Place); at != "" {
-		text += ", " + at
-	}
-	return text
+	return voltageFrom(l.source)
 }
 
 // hanging lists the terminals on a net.
@@ -155,15 +164,15 @@ var terminals = map[circuit.Kind][]string{
 func pinText(p circuit.Pin) string {
 	if d := p.Device; d != nil {
 		if names := terminals[d.Kind]; p.Terminal < len(names) {
-			return escape(d.Spelt) + " " + names[p.Terminal]
+			return code(d.Spelt) + " " + names[p.Terminal]
 		}
-		return escape(d.Spelt)
+		return code(d.Spelt)
 	}
 	if x := p.Instance; x != nil {
 		if x.Def != nil && p.Terminal < len(x.Def.Ports) {
-			return escape(x.Spelt + "." + x.Def.Ports[p.Terminal].Text)
+			return code(x.Spelt + "." + x.Def.Ports[p.Terminal].Text)
 		}
-		return escape(x.Spelt)
+		return code(x.Spelt)
 	}
 	return ""
 }

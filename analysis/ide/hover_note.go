@@ -41,13 +41,13 @@ func (q query) hoverNote(p place, m mark) string {
 		}
 		return ""
 	case *parser.Bias:
-		b.WriteString("The deck's writer says, in every mode: " + assigned(n.Assigns))
+		b.WriteString("Bias in every mode: " + p.assigned(n.Assigns))
 	case *parser.BiasFrom:
 		b.WriteString("Node voltages read from " + code(n.Path.Text))
 	case *parser.Mode:
-		fmt.Fprintf(&b, "Mode **%s**: %s; the bias lines hold too.", escape(n.Name.Text), assigned(n.Assigns))
+		fmt.Fprintf(&b, "Mode %s: %s, over the bias lines", name(n.Name.Text), p.assigned(n.Assigns))
 	case *parser.Corner:
-		fmt.Fprintf(&b, "Corner **%s**", escape(n.Name.Text))
+		fmt.Fprintf(&b, "Corner %s", name(n.Name.Text))
 		if n.Temp != nil {
 			fmt.Fprintf(&b, ", at %s °C", p.text(n.Temp))
 		}
@@ -55,12 +55,12 @@ func (q query) hoverNote(p place, m mark) string {
 			fmt.Fprintf(&b, ", library section %s", code(n.Lib.Text))
 		}
 		if len(n.Assigns) > 0 {
-			b.WriteString(": " + assigned(n.Assigns))
+			b.WriteString(": " + p.assigned(n.Assigns))
 		}
 	case *parser.Expect:
 		b.WriteString(q.outcomes(a))
 	case *parser.Allow:
-		fmt.Fprintf(&b, "Silences the rule %s here: %s", code(n.Rule.Text), escape(n.Reason.Text))
+		fmt.Fprintf(&b, "Silences the rule %s here: %s", code(n.Rule.Text), code(n.Reason.Text))
 	case *parser.Rating:
 		fmt.Fprintf(&b, "Absolute limits of every device whose model is named %s.", code(n.Model.Text))
 	case *parser.Fit:
@@ -80,10 +80,15 @@ func (p place) text(e parser.Expr) string {
 	return p.Text[sp.Start:sp.End]
 }
 
-func assigned(as []parser.Assign) string {
+// assigned are voltages as written.
+func (p place) assigned(as []parser.Assign) string {
 	var texts []string
 	for _, a := range as {
-		texts = append(texts, code("v("+a.Node.Text+")"))
+		text := "v(" + a.Node.Text + ")=" + p.text(a.Lo)
+		if a.Hi != nil {
+			text += ".." + p.text(a.Hi)
+		}
+		texts = append(texts, code(text))
 	}
 	return strings.Join(texts, ", ")
 }
@@ -99,7 +104,7 @@ func (q query) outcomes(a *parser.Annotation) string {
 		if c.Note.Annotation != a {
 			continue
 		}
-		fmt.Fprintf(&b, "- %s %s: %s\n", escape(c.Subject), code(c.Wanted), outcome(c))
+		fmt.Fprintf(&b, "- %s %s: %s\n", name(c.Subject), code(c.Wanted), outcome(c))
 	}
 	if b.Len() == 0 {
 		return "This expectation was not judged."
@@ -110,10 +115,10 @@ func (q query) outcomes(a *parser.Annotation) string {
 func outcome(c bias.Check) string {
 	var at []string
 	if c.Mode != "" {
-		at = append(at, "in "+escape(c.Mode))
+		at = append(at, "in "+name(c.Mode))
 	}
 	if c.Corner != "" {
-		at = append(at, "at "+escape(c.Corner))
+		at = append(at, "at "+name(c.Corner))
 	}
 	if c.At != "" {
 		at = append(at, "with "+c.At)

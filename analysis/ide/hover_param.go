@@ -104,7 +104,7 @@ func (q query) hoverKey(p place, m mark) string {
 	if len(values) == 0 {
 		return ""
 	}
-	return fmt.Sprintf("%s of %s = %s", code(m.text), escape(e.Name.Text), strings.Join(values, ", "))
+	return fmt.Sprintf("%s of %s = %s", code(m.text), name(e.Name.Text), strings.Join(values, ", "))
 }
 
 // givenValue is the value of `key=` on the card of an element of a cell.

@@ -35,6 +35,9 @@ func InlayHints(ctx context.Context, deck *workspace.Deck, path string, span sou
 		return nil
 	}
 	f := q.doc.File
+	if f.Len() == 0 {
+		return nil
+	}
 	first, last := max(0, f.CardAt(span.Start)), min(f.CardAt(span.End), f.Len()-1)
 	seen := map[*parser.Subckt][]sighting{}
 	var hints []Hint

@@ -52,6 +52,15 @@ func operations(seen []sighting, e *parser.Element) []operation {
 	return out
 }
 
+// split is the operation corner by corner.
+func (o operation) split() []operation {
+	var out []operation
+	for _, p := range o.parts {
+		out = append(out, operation{o.path, o.mode, []part{p}})
+	}
+	return out
+}
+
 // evaluated are the corners at which the device has an operating point.
 func (o operation) evaluated() []part {
 	return slices.DeleteFunc(slices.Clone(o.parts), func(p part) bool { return len(p.Points) == 0 })

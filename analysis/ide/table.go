@@ -1,8 +1,11 @@
 package ide
 
 import (
+	"fmt"
 	"math"
+	"strconv"
 	"strings"
+	"unicode/utf8"
 
 	"triodeck/analysis/quantity"
 )
@@ -14,41 +17,82 @@ type table struct {
 	rows [][]string
 }
 
-func (t *table) add(cells ...string) { t.rows = append(t.rows, cells) }
+func (t *table) add(cells ...string) {
+	for i, c := range cells {
+		cells[i] = strings.ReplaceAll(c, "|", "\\|")
+	}
+	t.rows = append(t.rows, cells)
+}
 
 func (t *table) String() string {
-	var b strings.Builder
-	used := make([]bool, len(t.head))
+	width := make([]int, len(t.head)) // 0: the column is empty
 	for _, r := range t.rows {
 		for i, c := range r {
-			used[i] = used[i] || c != ""
+			if c != "" {
+				width[i] = max(width[i], cellWidth(c), cellWidth(t.head[i]), 3)
+			}
 		}
 	}
-	line := func(cells func(i int) string) {
-		for i := range t.head {
-			if used[i] {
-				b.WriteString("| " + strings.ReplaceAll(cells(i), "|", "\\|") + " ")
+	var b strings.Builder
+	line := func(pad string, cells []string) {
+		for i, c := range cells {
+			if width[i] > 0 {
+				b.WriteString("| " + c + strings.Repeat(pad, width[i]-cellWidth(c)) + " ")
 			}
 		}
 		b.WriteString("|\n")
 	}
-	line(func(i int) string { return t.head[i] })
-	line(func(int) string { return "---" })
+	line(" ", t.head)
+	line("-", make([]string, len(t.head)))
 	for _, r := range t.rows {
-		line(func(i int) string { return r[i] })
+		line(" ", r)
 	}
 	return b.String()
 }
 
+// cellWidth is how many columns a cell takes in a window of fixed pitch.
+func cellWidth(s string) int { return utf8.RuneCountInString(s) }
+
 // spread writes the range between two values with their unit once where they
-// share it: "98.0–145 Ω", "-12 mV to 45 mV".
+// can share it: "98.0–145 Ω", "-12.0 to 45.0 mV", "0.453–1.23 V".
 func spread(lo, hi float64, unit string) string {
-	return between(quantity.Format(lo, unit), quantity.Format(hi, unit), lo)
+	a, b := quantity.Format(lo, unit), quantity.Format(hi, unit)
+	large, small := math.Max(math.Abs(lo), math.Abs(hi)), math.Min(math.Abs(lo), math.Abs(hi))
+	if small > 0 && large/small <= sharedRatio {
+		shared := quantity.Format(large, unit)
+		_, suffix, _ := strings.Cut(shared, " ")
+		if scale, ok := scales[strings.TrimSuffix(suffix, unit)]; ok {
+			a, b = rescaled(a, lo/scale, suffix), rescaled(b, hi/scale, suffix)
+		}
+	}
+	return between(a, b, lo)
 }
 
-// voltSpread is spread for node voltages.
+// sharedRatio is the largest ratio of two values that are shown with one prefix.
+const sharedRatio = 30
+
+var scales = map[string]float64{"G": 1e9, "M": 1e6, "k": 1e3, "": 1, "m": 1e-3, "µ": 1e-6, "n": 1e-9, "p": 1e-12, "f": 1e-15}
+
+// rescaled is a value in another unit, to three digits; what has it is kept.
+func rescaled(text string, v float64, suffix string) string {
+	if _, s, _ := strings.Cut(text, " "); s == suffix {
+		return text
+	}
+	digits := 3
+	if a := math.Abs(v); a >= 1 {
+		digits = 2
+	}
+	return strconv.FormatFloat(v, 'f', digits, 64) + " " + suffix
+}
+
+// voltSpread is spread for node voltages, to the millivolt.
 func voltSpread(lo, hi float64) string {
-	return between(quantity.Volts(lo), quantity.Volts(hi), lo)
+	a, b := quantity.Volts(lo), quantity.Volts(hi)
+	_, ua, _ := strings.Cut(a, " ")
+	if _, ub, _ := strings.Cut(b, " "); ua != ub {
+		a, b = fmt.Sprintf("%.3f V", lo), fmt.Sprintf("%.3f V", hi)
+	}
+	return between(a, b, lo)
 }
 
 func between(a, b string, lo float64) string {
@@ -56,12 +100,14 @@ func between(a, b string, lo float64) string {
 		return a
 	}
 	na, ua, _ := strings.Cut(a, " ")
-	_, ub, _ := strings.Cut(b, " ")
-	if ua == ub && ua != "" && lo >= 0 {
-		return na + "–" + b
-	}
-	if lo == 0 && ub != "" {
+	nb, ub, _ := strings.Cut(b, " ")
+	switch {
+	case lo == 0 && ub != "":
 		return "0–" + b
+	case ua == ub && ua != "" && lo >= 0:
+		return na + "–" + b
+	case ua != "" && (ua == ub || nb == "0"):
+		return na + " to " + nb + " " + ua
 	}
 	return a + " to " + b
 }
