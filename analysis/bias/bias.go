@@ -91,7 +91,8 @@ type Device struct {
 
 // Row is one MOSFET of the design under its hierarchical name.
 type Row struct {
-	Path    string // x1.xsw.m3, as spelt
+	Path    string // x1.xsw.m3, as spelt; that of the instance where a subckt stands for one MOSFET
+	Wrapper string // folded name of that subckt, else ""
 	Context *Context
 	*Device
 }

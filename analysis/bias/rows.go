@@ -19,11 +19,18 @@ func (r *Result) Rows(run *Run) iter.Seq[Row] {
 
 func (c *Context) rows(prefix string, yield func(Row) bool) bool {
 	for _, d := range c.Devices {
-		if !yield(Row{prefix + d.Device.Spelt, c, d}) {
+		if !yield(Row{Path: prefix + d.Device.Spelt, Context: c, Device: d}) {
 			return false
 		}
 	}
 	for _, ch := range c.Children {
+		if w, ok := ch.Wrapped(); ok {
+			w.Path = prefix + ch.Instance.Spelt
+			if !yield(w) {
+				return false
+			}
+			continue
+		}
 		if ch.Context != nil && !ch.Context.rows(prefix+ch.Instance.Spelt+".", yield) {
 			return false
 		}

@@ -61,6 +61,10 @@ func (c *Context) find(prefix, pattern string) []target {
 			continue
 		}
 		inner := prefix + ch.Instance.Spelt + "."
+		if w, ok := ch.Wrapped(); ok && Match(pattern, ch.Instance.Name) {
+			out = append(out, target{prefix + ch.Instance.Spelt, w.Context, w.Device})
+			continue
+		}
 		if pattern == ch.Instance.Name && len(ch.Context.Devices) == 1 && len(ch.Context.Children) == 0 {
 			// An instance around one MOSFET is that MOSFET to its writer.
 			out = append(out, target{inner + ch.Context.Devices[0].Device.Spelt, ch.Context, ch.Context.Devices[0]})

@@ -77,37 +77,21 @@ func (w *partWalk) context(prefix string, c *bias.Context) bool {
 		if x.Context == nil {
 			continue
 		}
-		path := prefix + x.Instance.Spelt + "."
-		if d := wrapped(x.Context); d != nil {
+		if row, ok := x.Wrapped(); ok {
 			m := part{
-				Device: d, Path: path + d.Device.Spelt, Card: x.Instance.Place, Elem: x.Instance.Elem,
-				Wrapper: x.Context.Cell.Scope.Name, Run: w.run, Context: x.Context,
+				Device: row.Device, Path: prefix + row.Path, Card: x.Instance.Place, Elem: x.Instance.Elem,
+				Wrapper: row.Wrapper, Run: w.run, Context: row.Context,
 			}
 			if !w.yield(m) {
 				return false
 			}
 			continue
 		}
-		if !w.context(path, x.Context) {
+		if !w.context(prefix+x.Instance.Spelt+".", x.Context) {
 			return false
 		}
 	}
 	return true
-}
-
-// wrapped is the MOSFET of a context whose cell stands for it. A wrapper inside
-// a wrapper leads further down.
-func wrapped(c *bias.Context) *bias.Device {
-	if c.Cell == nil || c.Cell.Wrapper() == nil {
-		return nil
-	}
-	for len(c.Devices) == 0 && len(c.Children) == 1 && c.Children[0].Context != nil {
-		c = c.Children[0].Context
-	}
-	if len(c.Devices) != 1 {
-		return nil
-	}
-	return c.Devices[0]
 }
 
 // find is the MOSFET of a hierarchical name in one run.

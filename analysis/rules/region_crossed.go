@@ -112,7 +112,7 @@ func (list regionNotes) speaksOf(m part) bool {
 		}
 		for rest, more := path, true; more; {
 			head, tail, ok := strings.Cut(rest, ".")
-			if bias.Match(target, rest) || !ok && bias.Match(target, head) || m.Wrapper != "" && bias.Match(target+".*", rest) {
+			if bias.Match(target, rest) || !ok && bias.Match(target, head) {
 				return true
 			}
 			rest, more = tail, ok

@@ -29,7 +29,7 @@ var layers = map[string]layer{
 	"analysis/curve":     {[]string{"analysis/bias", "analysis/circuit"}, "a curve is taken out of a result"},
 	"analysis/report":    {[]string{"analysis", "analysis/circuit", "parser", "parser/source"}, "printing findings needs only findings"},
 	"analysis/rules":     {[]string{"analysis", "analysis/bias", "analysis/circuit", "analysis/mos", "analysis/quantity", "parser", "parser/source"}, "a rule sees the pass and what lies below it"},
-	"analysis/workspace": {[]string{"analysis", "analysis/bias", "analysis/circuit", "analysis/report", "parser", "parser/source"}, "a snapshot is handed its rules"},
+	"analysis/workspace": {[]string{"analysis", "analysis/bias", "analysis/circuit", "analysis/report", "analysis/settings", "parser", "parser/source"}, "a snapshot is handed its rules"},
 	"analysis/ide":       {[]string{"analysis", "analysis/bias", "analysis/circuit", "analysis/mos", "analysis/quantity", "analysis/workspace", "parser", "parser/source"}, "features speak in byte offsets and plain structs"},
 	"lsp":                {[]string{"analysis", "analysis/circuit", "analysis/ide", "analysis/rules", "analysis/workspace", "parser", "parser/source"}, "the server converts and dispatches"},
 	"cmd/triodeck":       {[]string{"analysis", "analysis/bias", "analysis/circuit", "analysis/curve", "analysis/mos", "analysis/quantity", "analysis/report", "analysis/rules", "analysis/workspace", "lsp", "parser", "parser/source"}, "commands stand on everything"},

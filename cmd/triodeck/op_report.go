@@ -117,6 +117,9 @@ func newOpDevice(run *bias.Run, row bias.Row) opDevice {
 		Margin: of("margin"), Id: of("id"), Gm: of("gm"), Gds: of("gds"), Gmb: of("gmb"), Ron: of("ron"),
 		Rds: of("rds"), Ic: of("ic"), Source: row.Source.String(), Notes: []string{},
 	}
+	if row.Wrapper != "" {
+		d.Model = row.Wrapper
+	}
 	if region := regionText(row.Device); region != "" {
 		d.Region = &region
 	}
