@@ -142,6 +142,10 @@ func named(e *ElementAt, def *Scope) []parser.Word {
 // element adds a device or an instance.
 func (b *builder) element(e *ElementAt) {
 	model, def := b.resolve(e)
+	if model == nil && (def == nil || def.opaque()) && b.stated(e) != nil {
+		b.device(e, nil)
+		return
+	}
 	if def != nil || e.Letter == 'x' && model == nil {
 		b.instance(e, def)
 		return

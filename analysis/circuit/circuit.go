@@ -39,6 +39,8 @@ type Options struct {
 	Roots   []string          // folders to look for includes in, after the including file's own
 	TempC   *float64          // °C, in place of the deck's own temperature
 	Facts   Facts             // what no card tells
+
+	Problems []Problem // found before the files were read; the design passes them on
 }
 
 // Design is a root deck with everything that it reaches.
@@ -71,6 +73,7 @@ const (
 	ParamInvalid                       // an expression that does not evaluate otherwise
 	BinMissing                         // a size that no bin of its model covers
 	BinOverlap                         // a size that several bins cover
+	SettingInvalid                     // a settings file that says something else than it may
 )
 
 // Problem is one cause found while loading.

@@ -38,6 +38,12 @@ func (b *builder) device(e *ElementAt, model *Model) {
 	if d.Kind == OtherKind && model != nil {
 		d.Kind = modelKinds[model.Type()]
 	}
+	if model == nil {
+		if fact := b.stated(e); fact != nil {
+			d.Kind = classKinds[fact.Class]
+			d.Nets = rolesFirst(d.Nets, b.pins(e))
+		}
+	}
 	if d.Kind == MOSFET {
 		b.size(e, d)
 		model = d.Model

@@ -44,6 +44,7 @@ var kindWords = map[circuit.ProblemKind]string{
 	circuit.BlockStray: "block-stray", circuit.Recursion: "recursion", circuit.TooDeep: "too-deep",
 	circuit.ParamCycle: "param-cycle", circuit.ParamUndefined: "param-undefined", circuit.ParamInvalid: "param-invalid",
 	circuit.BinMissing: "bin-missing", circuit.BinOverlap: "bin-overlap",
+	circuit.SettingInvalid: "setting-invalid",
 }
 
 // where is a place as path:line:column and the text there.

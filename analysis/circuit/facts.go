@@ -1,5 +1,7 @@
 package circuit
 
+import "triodeck/parser"
+
 // WidthMeaning says what the W of an instance line means where it has fingers.
 type WidthMeaning uint8
 
@@ -59,3 +61,46 @@ func BaseName(folded string) string {
 // FactNames are the folded names under which facts and annotations speak of a
 // device: its model's, and the subckt's where the device is the only one in it.
 func (c *Cell) FactNames(d *Device) []string { return c.Scope.factNames(d.Elem.Model.Text) }
+
+// classKinds gives the physics by the class that a fact states.
+var classKinds = map[string]Kind{
+	"nmos": MOSFET, "pmos": MOSFET, "resistor": Resistor, "capacitor": Capacitor, "inductor": Inductor,
+	"diode": Diode, "npn": Bipolar, "pnp": Bipolar, "ignore": OtherKind,
+}
+
+// stated gives the fact that says what an element is whose model or subckt is
+// nowhere to be read: an X, or another letter that has no physics of its own.
+func (b *builder) stated(e *ElementAt) *Fact {
+	if len(b.options.Facts) == 0 || e.Model.IsZero() || kinds[e.Letter] != OtherKind {
+		return nil
+	}
+	return b.options.Facts.Find(factNames(e.Model), func(f *Fact) bool { return f.Class != "" })
+}
+
+// pins gives the stated roles of an element's nodes, nil if nobody states them.
+func (b *builder) pins(e *ElementAt) []int {
+	if fact := b.options.Facts.Find(factNames(e.Model), func(f *Fact) bool { return f.Pins != nil }); fact != nil {
+		return fact.Pins
+	}
+	return nil
+}
+
+func factNames(model parser.Word) []string { return []string{BaseName(parser.Fold(model.Text))} }
+
+// rolesFirst puts nets into the order drain, gate, source, bulk.
+func rolesFirst(nets []NetID, roles []int) []NetID {
+	if len(roles) == 0 || len(nets) < len(roles) {
+		return nets
+	}
+	sorted := append([]NetID(nil), nets...)
+	for at, role := range roles {
+		sorted[role] = nets[at]
+	}
+	return sorted
+}
+
+// opaque says that a subckt has ports and no body: what stood in it is encrypted,
+// or left to another program.
+func (s *Scope) opaque() bool {
+	return len(s.Elements) == 0 && len(s.Children) == 0 && len(s.models) == 0
+}

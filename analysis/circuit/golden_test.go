@@ -13,6 +13,7 @@ import (
 	"github.com/rogpeppe/go-internal/txtar"
 
 	"triodeck/analysis/circuit"
+	"triodeck/analysis/settings"
 	"triodeck/parser"
 )
 
@@ -77,6 +78,12 @@ func readCase(t *testing.T, ar *txtar.Archive) *testCase {
 		switch f.Name {
 		case "design":
 			c.want = string(f.Data)
+		case settings.Name:
+			set := settings.Parse(f.Name, f.Data)
+			if len(set.Problems) > 0 {
+				t.Fatalf("the case's settings: %+v", set.Problems)
+			}
+			c.options.Facts, c.options.Roots = set.Facts, set.Roots
 		case "options":
 			c.readOptions(t, string(f.Data))
 		default:

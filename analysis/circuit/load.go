@@ -3,6 +3,7 @@ package circuit
 import (
 	"context"
 	"path/filepath"
+	"slices"
 
 	"triodeck/parser"
 )
@@ -67,7 +68,7 @@ func Load(ctx context.Context, reader Reader, root string, options Options) *Des
 	r.design.Top.Walk((*Scope).finish)
 	r.applySettings()
 	r.elaborate()
-	r.design.Problems = r.problems.list
+	r.design.Problems = append(slices.Clip(options.Problems), r.problems.list...)
 	return r.design
 }
 

@@ -69,7 +69,7 @@ func (d *Deck) Bias(ctx context.Context) *bias.Result {
 }
 
 func (d *Deck) load(ctx context.Context, o circuit.Options) *circuit.Design {
-	return circuit.Load(ctx, reader{d}, d.Root, o)
+	return circuit.Load(ctx, reader{d}, d.Root, d.apply(o))
 }
 
 // Findings is what the rules have to say about the deck and every file that it

@@ -10,6 +10,7 @@ import (
 	"path/filepath"
 	"sync"
 
+	"triodeck/analysis/settings"
 	"triodeck/parser"
 )
 
@@ -27,6 +28,7 @@ type Snapshot struct {
 
 	mu    sync.Mutex
 	decks map[string]*Deck
+	set   map[string]*settings.File // by path
 }
 
 // New is a snapshot with no open buffer.
