@@ -26,6 +26,8 @@ type client struct {
 	ended  chan error // what Serve returned
 	nextID int
 
+	formats []string // of texts, as the client prefers them; none: it does not say
+
 	mu       sync.Mutex
 	answers  map[string]chan message
 	notices  []message
@@ -178,12 +180,15 @@ func (c *client) idle() []message {
 	return got
 }
 
-// open is the usual beginning of a session.
+// initialize is the usual beginning of a session.
 func (c *client) initialize(encodings ...string) message {
 	c.t.Helper()
 	m := c.call("initialize", map[string]any{
 		"processId": nil, "rootUri": nil,
-		"capabilities": map[string]any{"general": map[string]any{"positionEncodings": encodings}},
+		"capabilities": map[string]any{
+			"general":      map[string]any{"positionEncodings": encodings},
+			"textDocument": map[string]any{"hover": map[string]any{"contentFormat": c.formats}},
+		},
 	})
 	c.notify("initialized", map[string]any{})
 	return m

@@ -157,8 +157,10 @@ func (d *diagnostics) early(ctx context.Context, st *state) {
 		}
 		if last.file != nil {
 			found = append(found, carried(last, doc, rules)...)
+		} else if len(found) == 0 {
+			continue // "none" is for the whole pass to say
 		}
-		d.send(st, path, found)
+		d.send(st, path, analysis.Sort(found))
 	}
 }
 

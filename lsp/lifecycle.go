@@ -39,6 +39,7 @@ func (s *server) Initialize(_ context.Context, p *protocol.InitializeParams) (*p
 	}
 	var kind protocol.PositionEncodingKind
 	s.enc, kind = agree(offers)
+	s.plain = prefersPlain(p.Capabilities)
 	s.phase.Store(running)
 	return &protocol.InitializeResult{
 		Capabilities: capabilities(kind),

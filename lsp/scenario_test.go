@@ -26,7 +26,7 @@ var update = flag.Bool("update", false, "rewrite the wanted output of the scenar
 // step and what came back. Lines and columns count from 1; a column is in the
 // unit that was agreed.
 //
-//	initialize utf-8|utf-16
+//	initialize utf-8|utf-16 [plaintext]
 //	open FILE                       with the archive's text, version 1
 //	change FILE A:B-C:D "TEXT"      replaces a range; the version goes up by one
 //	replace FILE OTHER              the whole text by that of another archive file
@@ -116,7 +116,7 @@ var stepForm = regexp.MustCompile(`^(\w+)(?: (\S+))?(?: (\d+):(\d+)(?:-(\d+):(\d
 func (p *player) step(step string) {
 	p.t.Helper()
 	if body, ok := strings.CutPrefix(step, "send "); ok {
-		p.send(strings.ReplaceAll(body, "$", string(uriOf(home("")))+"/"))
+		p.send(body)
 		return
 	}
 	f := stepForm.FindStringSubmatch(step)
@@ -129,6 +129,7 @@ func (p *player) step(step string) {
 	at := map[string]any{"line": num(3), "character": num(4)}
 	switch verb {
 	case "initialize":
+		p.client.formats = strings.Fields(f[7])
 		p.print("", p.client.initialize(name))
 	case "open":
 		p.versions[name] = 1

@@ -24,6 +24,7 @@ type server struct {
 	log         *slog.Logger
 	phase       atomic.Int32
 	enc         encoding // set by initialize, before anything reads it
+	plain       bool     // likewise: hovers go without markdown
 	state       atomic.Pointer[state]
 	diagnostics *diagnostics
 	hangUp      func()
