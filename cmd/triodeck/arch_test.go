@@ -27,12 +27,13 @@ var layers = map[string]layer{
 	"analysis/settings":  {[]string{"analysis/circuit", "analysis/mos", "parser", "parser/source"}, "settings are facts about circuits, read from a text"},
 	"analysis":           {[]string{"analysis/bias", "analysis/circuit", "analysis/mos", "analysis/quantity", "parser", "parser/source"}, "what a rule is does not depend on any rule"},
 	"analysis/curve":     {[]string{"analysis/bias", "analysis/circuit"}, "a curve is taken out of a result"},
+	"analysis/known":     {[]string{"analysis"}, "a finding is recognised by what it says and where"},
 	"analysis/report":    {[]string{"analysis", "analysis/circuit", "parser", "parser/source"}, "printing findings needs only findings"},
 	"analysis/rules":     {[]string{"analysis", "analysis/bias", "analysis/circuit", "analysis/mos", "analysis/quantity", "parser", "parser/source"}, "a rule sees the pass and what lies below it"},
 	"analysis/workspace": {[]string{"analysis", "analysis/bias", "analysis/circuit", "analysis/report", "analysis/settings", "parser", "parser/source"}, "a snapshot is handed its rules"},
 	"analysis/ide":       {[]string{"analysis", "analysis/bias", "analysis/circuit", "analysis/mos", "analysis/quantity", "analysis/workspace", "parser", "parser/source"}, "features speak in byte offsets and plain structs"},
 	"lsp":                {[]string{"analysis", "analysis/circuit", "analysis/ide", "analysis/rules", "analysis/workspace", "parser", "parser/source"}, "the server converts and dispatches"},
-	"cmd/triodeck":       {[]string{"analysis", "analysis/bias", "analysis/circuit", "analysis/curve", "analysis/mos", "analysis/quantity", "analysis/report", "analysis/rules", "analysis/workspace", "lsp", "parser", "parser/source"}, "commands stand on everything"},
+	"cmd/triodeck":       {[]string{"analysis", "analysis/bias", "analysis/circuit", "analysis/curve", "analysis/known", "analysis/mos", "analysis/quantity", "analysis/report", "analysis/rules", "analysis/workspace", "lsp", "parser", "parser/source"}, "commands stand on everything"},
 }
 
 // only lists modules that one package alone may import.

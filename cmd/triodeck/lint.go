@@ -19,6 +19,8 @@ type lintCmd struct {
 	FailOn string   `help:"Exit with 1 at this severity or above: error, warning or note." enum:"error,warning,note" default:"error"`
 	Apply  bool     `help:"Write the edits that are certain, then report what is left."`
 	Also   []string `help:"With --apply: write this rule's edits too where they are not certain." placeholder:"RULE"`
+	Known  string   `help:"Pass over the findings that this file records." placeholder:"FILE"`
+	Record bool     `help:"With --known: write the file anew with what is found now."`
 }
 
 // rounds bounds how often --apply looks again: an edit may uncover another.
@@ -46,6 +48,10 @@ func (c *lintCmd) Run(ctx context.Context, s streams) error {
 	if err != nil {
 		fmt.Fprintf(s.err, "triodeck: %v\n", err)
 	}
+	findings, knownErr := c.passKnown(s, findings, &sum)
+	if knownErr != nil {
+		return knownErr
+	}
 	if printErr := c.print(s, findings, sum, time.Since(start)); printErr != nil {
 		return printErr
 	}
@@ -61,6 +67,9 @@ func (c *lintCmd) Run(ctx context.Context, s streams) error {
 func (c *lintCmd) check() error {
 	if len(c.Also) > 0 && !c.Apply {
 		return errors.New("--also goes with --apply")
+	}
+	if c.Record && c.Known == "" {
+		return errors.New("--record goes with --known")
 	}
 	for _, name := range c.Also {
 		if rules.ByName(name) == nil {
