@@ -161,12 +161,8 @@ func (w *worker) card(cell *circuit.Cell, d *circuit.Device, c *compiled) (mos.C
 		return mos.Card{}, false
 	}
 	card.Name = d.Model.Def.Name
-	for p, v := range d.Model.Params {
-		if v.Err != nil {
-			c.reason = fmt.Sprintf("parameter %q of model %q: %v", p, d.Elem.Model.Text, v.Err)
-			return mos.Card{}, false
-		}
-		card.Params[p] = v.V
+	if c.reason = numbers(&card, d.Elem.Model.Text, d.Model.Params); c.reason != "" {
+		return mos.Card{}, false
 	}
 	return w.tweaked(card), true
 }
