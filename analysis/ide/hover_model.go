@@ -16,17 +16,17 @@ var keyParams = []string{
 }
 
 // hoverModel tells what a model is and its main parameters.
-func (q query) hoverModel(p place, name string) string {
-	scope, folded := q.scope(p.card), parser.Fold(name)
+func (q query) hoverModel(p place, model string) string {
+	scope, folded := q.scope(p.card), parser.Fold(model)
 	defs := scope.FindModel(folded)
 	if len(defs) == 0 {
 		if bins := scope.FindBins(folded); len(bins) > 0 {
-			return fmt.Sprintf("%s · %d bins · first defined at %s", code(name), len(bins), where(bins[0].Place))
+			return fmt.Sprintf("%s · %d bins · first defined at %s", code(model), len(bins), where(bins[0].Place))
 		}
 		if scope.FindSubckt(folded) != nil {
-			return q.hoverSubckt(p, name)
+			return q.hoverSubckt(p, model)
 		}
-		return q.undefined(scope, "model", name)
+		return q.undefined(scope, "model", model)
 	}
 	def := defs[len(defs)-1]
 	var b strings.Builder
@@ -41,7 +41,7 @@ func (q query) hoverModel(p place, name string) string {
 	t := &table{head: []string{"parameter", "value"}}
 	for _, key := range keyParams {
 		if v, ok := values[key]; ok {
-			t.add(code(key), v)
+			t.add(name(key), v)
 		}
 	}
 	if len(t.rows) > 0 {

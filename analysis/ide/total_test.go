@@ -15,9 +15,9 @@ import (
 
 // askEverything asks every question at a place and holds the answers to lie in
 // their files.
-func askEverything(t *testing.T, files memory, root, path string, offset int32) {
+func askEverything(t *testing.T, files memory, deck *workspace.Deck, path string, offset int32) {
 	t.Helper()
-	ctx, deck := context.Background(), workspace.New(files).Deck(root)
+	ctx := context.Background()
 	inside := func(what, path string, sp source.Span) {
 		if sp.Start < 0 || sp.Start > sp.End || int(sp.End) > len(files[path]) {
 			t.Errorf("%s at %s:%d gives the span %v of %q with %d bytes", what, path, offset, sp, path, len(files[path]))
@@ -54,10 +54,10 @@ func TestEveryPlace(t *testing.T) {
 			files[filepath.Clean(f.Name)] = string(f.Data)
 		}
 		delete(files, "want")
-		root := filepath.Clean(archive.Files[0].Name)
+		deck := workspace.New(files).Deck(filepath.Clean(archive.Files[0].Name))
 		for name, text := range files {
-			for i := 0; i <= len(text); i += 3 {
-				askEverything(t, files, root, name, int32(i))
+			for i := range len(text) + 1 {
+				askEverything(t, files, deck, name, int32(i))
 			}
 		}
 	}
@@ -86,6 +86,7 @@ func FuzzPlaces(f *testing.F) {
 		if len(text) > 4000 {
 			t.Skip("longer texts only take longer")
 		}
-		askEverything(t, memory{"a.sp": text}, "a.sp", "a.sp", max(0, min(offset, int32(len(text)))))
+		files := memory{"a.sp": text}
+		askEverything(t, files, workspace.New(files).Deck("a.sp"), "a.sp", max(0, min(offset, int32(len(text)))))
 	})
 }
