@@ -4,6 +4,7 @@ import (
 	"encoding/json"
 	"errors"
 	"io"
+	"os"
 	"os/exec"
 	"slices"
 	"strings"
@@ -85,6 +86,19 @@ func TestArrowsGoDown(t *testing.T) {
 	for name := range layers {
 		if !seen[name] {
 			t.Errorf("package %s is on the map and not in the house", name)
+		}
+	}
+}
+
+// TestMapIsWritten holds the contributor's guide to the same table.
+func TestMapIsWritten(t *testing.T) {
+	guide, err := os.ReadFile("../../DEVELOPERS.md")
+	if err != nil {
+		t.Fatal(err)
+	}
+	for name := range layers {
+		if !strings.Contains(string(guide), "| `"+name+"/` |") {
+			t.Errorf("DEVELOPERS.md does not say what lives in %s/", name)
 		}
 	}
 }

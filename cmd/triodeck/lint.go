@@ -5,6 +5,7 @@ import (
 	"errors"
 	"fmt"
 	"os"
+	"slices"
 	"time"
 
 	"triodeck/analysis"
@@ -16,7 +17,7 @@ import (
 type lintCmd struct {
 	Paths  []string `arg:"" optional:"" help:"Decks, and folders to look for decks in (default: the working folder)."`
 	Format string   `help:"text, json or sarif." enum:"text,json,sarif" default:"text"`
-	FailOn string   `help:"Exit with 1 at this severity or above: error, warning or note." enum:"error,warning,note" default:"error"`
+	FailOn []string `help:"Exit with 1 at this severity or above: error, warning or note; rules' names may be added: error,not-evaluated." default:"error" placeholder:"error|warning|note"`
 	Apply  bool     `help:"Write the edits that are certain, then report what is left."`
 	Also   []string `help:"With --apply: write this rule's edits too where they are not certain." placeholder:"RULE"`
 	Known  string   `help:"Pass over the findings that this file records." placeholder:"FILE"`
@@ -58,13 +59,18 @@ func (c *lintCmd) Run(ctx context.Context, s streams) error {
 	switch {
 	case err != nil:
 		return status(exitUnable)
-	case atOrAbove(findings, c.FailOn):
+	case c.fails(findings):
 		return status(exitFindings)
 	}
 	return nil
 }
 
 func (c *lintCmd) check() error {
+	for _, on := range c.FailOn {
+		if _, ok := severity(on); !ok && rules.ByName(on) == nil {
+			return fmt.Errorf("--fail-on must be error, warning, note or a rule's name but got %q", on)
+		}
+	}
 	if len(c.Also) > 0 && !c.Apply {
 		return errors.New("--also goes with --apply")
 	}
@@ -129,14 +135,23 @@ func plural(n int, what string) string {
 	return fmt.Sprintf("%d %ss", n, what)
 }
 
-func atOrAbove(findings []analysis.Finding, level string) bool {
-	for _, f := range findings {
-		switch {
-		case f.Severity == analysis.Error,
-			f.Severity == analysis.Warning && level != "error",
-			level == "note":
-			return true
+// fails says whether the findings are such that the run ends with status 1.
+func (c *lintCmd) fails(findings []analysis.Finding) bool {
+	return slices.ContainsFunc(findings, func(f analysis.Finding) bool {
+		return slices.ContainsFunc(c.FailOn, func(on string) bool {
+			if level, ok := severity(on); ok {
+				return f.Severity >= level
+			}
+			return f.Rule == on
+		})
+	})
+}
+
+func severity(name string) (analysis.Severity, bool) {
+	for s := analysis.Note; s <= analysis.Error; s++ {
+		if s.String() == name {
+			return s, true
 		}
 	}
-	return false
+	return 0, false
 }
