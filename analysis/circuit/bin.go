@@ -6,6 +6,8 @@ import (
 	"sort"
 	"strings"
 	"sync"
+
+	"triodeck/parser"
 )
 
 // binTolerance widens a bin's limits by a fraction, so that a length written in
@@ -89,30 +91,53 @@ func (e *Env) table(m *Model) *binTable {
 	}
 	m.table.once.Do(func() {
 		for _, def := range m.Bins {
-			b := binLimits{def: def}
-			var failed error
-			for _, q := range []struct {
-				to    *float64
-				name  string
-				open  float64
-				limit error
-			}{{to: &b.l0, name: "lmin"}, {to: &b.l1, name: "lmax", open: math.Inf(1)}, {to: &b.w0, name: "wmin"}, {to: &b.w1, name: "wmax", open: math.Inf(1)}} {
-				v := e.ModelParam(def, q.name)
-				if v.Err != nil {
-					failed = v.Err
-				}
-				if *q.to = q.open; v.Set {
-					*q.to = v.V
-				}
-			}
-			if failed != nil {
-				m.table.failed = append(m.table.failed, failed)
+			b, err := e.limitsOf(def)
+			if err != nil {
+				m.table.failed = append(m.table.failed, err)
 				continue
 			}
 			m.table.bins = append(m.table.bins, b)
 		}
 	})
 	return m.table
+}
+
+// limitsOf evaluates a bin's limits and nothing else of its card.
+func (e *Env) limitsOf(def *ModelDef) (binLimits, error) {
+	b := binLimits{def: def, l1: math.Inf(1), w1: math.Inf(1)}
+	at := e.of(def.Scope)
+	if at == nil {
+		return b, nil
+	}
+	cards := at.cards(def)
+	for c := len(cards) - 1; c >= 0; c-- { // what the card itself states comes last
+		card := cards[c]
+		for k := range card.def.Params {
+			p := &card.def.Params[k]
+			if len(p.Name.Text) != len("lmin") {
+				continue
+			}
+			var to *float64
+			switch parser.Fold(p.Name.Text) {
+			case "lmin":
+				to = &b.l0
+			case "lmax":
+				to = &b.l1
+			case "wmin":
+				to = &b.w0
+			case "wmax":
+				to = &b.w1
+			default:
+				continue
+			}
+			v := card.env.modelValue(card.def, p)
+			if v.Err != nil {
+				return b, v.Err
+			}
+			*to = v.V
+		}
+	}
+	return b, nil
 }
 
 // maxRanges is how many ranges of bins a message lists.

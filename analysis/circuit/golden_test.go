@@ -33,6 +33,19 @@ func (m deckFiles) File(path string) (*parser.File, error) {
 	return parser.Parse([]byte(text)), nil
 }
 
+// Names lists a folder, and folders in it, as a disk does.
+func (m deckFiles) Names(folder string) []string {
+	var names []string
+	for path := range m {
+		below, err := filepath.Rel(folder, filepath.FromSlash(path))
+		if err == nil && !strings.HasPrefix(below, "..") {
+			name, _, _ := strings.Cut(filepath.ToSlash(below), "/")
+			names = append(names, name)
+		}
+	}
+	return names
+}
+
 // TestDesigns loads the files of each case, the first being the root deck, and
 // compares the design with what stands under `design`.
 func TestDesigns(t *testing.T) {

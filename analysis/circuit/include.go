@@ -43,26 +43,48 @@ func (r *reading) document(path string, f *parser.File) *Document {
 
 // locate finds the file of an include: beside the including file, then in the
 // roots. Either kind of slash separates folders, since decks travel between systems.
-func (r *reading) locate(from *Document, written string) (*Document, error) {
-	native := filepath.FromSlash(strings.ReplaceAll(written, `\`, "/"))
-	candidates := []string{native}
-	if !filepath.IsAbs(native) {
-		candidates[0] = filepath.Join(filepath.Dir(from.Path), native)
+// What a variable or `~` at the start stands for is not known here, so the rest of
+// such a path is looked for in the roots. The near path differs in case alone.
+func (r *reading) locate(from *Document, written string) (doc *Document, near string, failure error) {
+	path := strings.ReplaceAll(written, `\`, "/")
+	type candidate struct{ folder, path string }
+	candidates := []candidate{{filepath.Dir(from.Path), path}}
+	if filepath.IsAbs(filepath.FromSlash(path)) {
+		candidates[0].folder = ""
+	} else {
+		rest, variable := behindVariable(path)
+		if !variable {
+			rest = path
+		}
 		for _, root := range r.options.Roots {
-			candidates = append(candidates, filepath.Join(root, native))
+			candidates = append(candidates, candidate{root, rest})
 		}
 	}
-	var failure error
-	for _, path := range candidates {
-		o := r.open(path)
-		if o.err == nil {
-			return r.document(path, o.file), nil
-		}
-		if failure == nil || errors.Is(failure, fs.ErrNotExist) {
+	failure = fs.ErrNotExist
+	for _, c := range candidates {
+		full := filepath.Join(c.folder, filepath.FromSlash(c.path))
+		real, other := r.spelling(c.folder, c.path)
+		o := r.open(full)
+		switch {
+		case other && near == "":
+			near = real
+		case other:
+		case o.err == nil:
+			return r.document(full, o.file), "", nil
+		case errors.Is(failure, fs.ErrNotExist):
 			failure = o.err
 		}
 	}
-	return nil, failure
+	return nil, near, failure
+}
+
+// behindVariable gives a path without the variable or `~` that it starts with.
+func behindVariable(path string) (rest string, ok bool) {
+	if !strings.HasPrefix(path, "$") && !strings.HasPrefix(path, "~") {
+		return "", false
+	}
+	_, rest, ok = strings.Cut(path, "/")
+	return rest, ok && rest != "" && !strings.Contains(rest, "$")
 }
 
 // include reads another file, or one section of it, in place of the card.
@@ -71,10 +93,10 @@ func (r *reading) include(w *walk, card int, path parser.Word, wanted parser.Wor
 		return
 	}
 	at := place(w.doc, card, path.Span())
-	doc, err := r.locate(w.doc, path.Text)
-	if err != nil {
+	doc, near, err := r.locate(w.doc, path.Text)
+	if err != nil || doc == nil {
 		r.scope.Open = true
-		r.problems.add(IncludeMissing, at, path.Text, "%s", unreadable(path.Text, err))
+		r.missing(w, at, path.Text, near, err)
 		return
 	}
 	name := parser.Fold(wanted.Text)
@@ -106,6 +128,9 @@ func (r *reading) include(w *walk, card int, path parser.Word, wanted parser.Wor
 		sec, ok := r.sectionsOf(doc.File).find(name)
 		if !ok {
 			r.scope.Open = true
+			if r.said(doc.Path + "\x00" + name) {
+				return
+			}
 			r.problems.add(SectionMissing, place(w.doc, card, wanted.Span()), wanted.Text, "file %q has no section %q%s",
 				path.Text, wanted.Text, offered(r.sectionsOf(doc.File)))
 			return
@@ -114,6 +139,34 @@ func (r *reading) include(w *walk, card int, path parser.Word, wanted parser.Wor
 		in.from, in.to = sec.from+1, sec.to
 	}
 	r.walk(in)
+}
+
+// missing says that a file is not there, once however many lines ask for it.
+func (r *reading) missing(w *walk, at Place, written, near string, err error) {
+	wanted := filepath.ToSlash(strings.ReplaceAll(written, `\`, "/"))
+	if _, variable := behindVariable(wanted); !variable && !filepath.IsAbs(filepath.FromSlash(wanted)) {
+		wanted = filepath.Join(filepath.Dir(w.doc.Path), filepath.FromSlash(wanted))
+	}
+	if r.said(wanted) {
+		return
+	}
+	message := unreadable(written, err)
+	if near != "" {
+		message = `file "` + written + `" is not found: "` + near + `" differs from it in case`
+	}
+	r.problems.add(IncludeMissing, at, written, "%s", message)
+}
+
+// said notes a file or section that is missing, and says whether it was noted before.
+func (r *reading) said(what string) bool {
+	if r.absent[what] {
+		return true
+	}
+	if r.absent == nil {
+		r.absent = map[string]bool{}
+	}
+	r.absent[what] = true
+	return false
 }
 
 func unreadable(name string, err error) string {
@@ -126,9 +179,9 @@ func unreadable(name string, err error) string {
 		}
 		return quoted + " cannot be read: " + err.Error()
 	case strings.Contains(name, "$"):
-		return quoted + " is not found: variables in a path are not expanded"
+		return quoted + " is not found: what a variable stands for is not known here, and no include folder of the settings holds the rest of the path"
 	case strings.HasPrefix(name, "~"):
-		return quoted + ` is not found: "~" in a path is not expanded`
+		return quoted + ` is not found: what "~" stands for is not known here, and no include folder of the settings holds the rest of the path`
 	}
 	return quoted + " is not found"
 }

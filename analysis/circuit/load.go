@@ -14,6 +14,7 @@ type loader struct {
 	reader  Reader
 	options Options
 	files   map[string]opened
+	folders map[string]folder
 	index   map[*parser.File]*sections
 	chosen  map[condKey]int // top-level conditionals decided: the arm, -1 for none
 	refused []refusal       // tests of theirs that did not evaluate
@@ -31,6 +32,7 @@ type reading struct {
 	pending   []*pendingCond
 	settings  []setting
 	undefined map[string]bool // names reported
+	absent    map[string]bool // files and sections reported
 	cards     int
 	reads     int
 	scale     float64
@@ -53,9 +55,10 @@ type walk struct {
 func Load(ctx context.Context, reader Reader, root string, options Options) *Design {
 	l := &loader{
 		ctx: ctx, reader: reader, options: options,
-		files:  map[string]opened{},
-		index:  map[*parser.File]*sections{},
-		chosen: map[condKey]int{},
+		files:   map[string]opened{},
+		folders: map[string]folder{},
+		index:   map[*parser.File]*sections{},
+		chosen:  map[condKey]int{},
 	}
 	var r *reading
 	for round := 1; ; round++ {

@@ -94,6 +94,14 @@ func (r reader) File(path string) (*parser.File, error) {
 	return r.deck.snap.File(path)
 }
 
+// Names lists a folder, so that a path counts in its own case only.
+func (r reader) Names(folder string) []string {
+	if l, ok := r.deck.snap.files.(circuit.Lister); ok {
+		return l.Names(folder)
+	}
+	return nil
+}
+
 // asked is the set of paths that a deck depends on.
 type asked struct {
 	mu    sync.Mutex

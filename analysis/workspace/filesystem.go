@@ -2,8 +2,11 @@ package workspace
 
 import (
 	"io/fs"
+	"maps"
 	"os"
 	"path/filepath"
+	"slices"
+	"strings"
 )
 
 // FileSystem reads whole files.
@@ -45,4 +48,34 @@ func (m Map) ReadFile(path string) ([]byte, error) {
 		return []byte(s), nil
 	}
 	return nil, &fs.PathError{Op: "open", Path: path, Err: fs.ErrNotExist}
+}
+
+// Names lists what lies in a folder of the disk, nothing if it cannot be read.
+func (osFiles) Names(folder string) []string {
+	if folder == "" {
+		folder = "."
+	}
+	entries, err := os.ReadDir(folder)
+	if err != nil {
+		return nil
+	}
+	names := make([]string, len(entries))
+	for i, e := range entries {
+		names[i] = e.Name()
+	}
+	return names
+}
+
+// Names lists what lies in a folder of the memory.
+func (m Map) Names(folder string) []string {
+	seen := map[string]bool{}
+	for path := range m {
+		below, err := filepath.Rel(folder, path)
+		if err != nil || below == "." || strings.HasPrefix(below, "..") {
+			continue
+		}
+		name, _, _ := strings.Cut(filepath.ToSlash(below), "/")
+		seen[name] = true
+	}
+	return slices.Sorted(maps.Keys(seen))
 }
