@@ -3,14 +3,14 @@ package circuit
 import "triodeck/parser"
 
 // Wrapper is a subckt that stands for one MOSFET, as foundries write them: the
-// transistor, its model bins, perhaps series resistors and parasitic junctions,
-// perhaps another wrapper in between.
+// transistor, its model bins, perhaps series resistors and parasitic junctions on
+// their own or in subckts, perhaps another wrapper in between.
 type Wrapper struct {
 	Path   []*Instance  // from the cell to the transistor's own; empty if they are one
 	Cell   *Cell        // the transistor's own cell
 	Device *Device      // the transistor
 	Ports  [4]int       // the wrapper's port that each terminal (d g s b) reaches, -1 for a global net
-	Series [4][]*Device // resistors between the terminal and that port, outermost first
+	Series [4][]*Device // resistors, and sources of 0 V, between the terminal and that port, outermost first
 }
 
 // Wrapped gives the one MOSFET that the cell stands for; see Wrapper.
@@ -31,7 +31,7 @@ func (c *Cell) Wrapper() *Wrapper { return c.wrapper(maxWrapping) }
 const maxWrapping = 4
 
 func (c *Cell) wrapper(depth int) *Wrapper {
-	if c.Scope.Subckt == nil || len(c.Scope.Notes) > 0 || len(c.Instances) > 1 || depth == 0 {
+	if c.Scope.Subckt == nil || len(c.Scope.Notes) > 0 || depth == 0 {
 		return nil
 	}
 	w := &Wrapper{Cell: c}
@@ -39,18 +39,27 @@ func (c *Cell) wrapper(depth int) *Wrapper {
 	for _, d := range c.Devices {
 		switch d.Kind {
 		case MOSFET:
-			if w.Device != nil {
+			if w.Device != nil || !c.parametric(d) {
 				return nil
 			}
 			w.Device, nets = d, d.Nets
 		case Resistor, Capacitor, Diode:
+		case VSource:
+			if !d.shorts() {
+				return nil
+			}
 		default:
 			return nil
 		}
 	}
-	if len(c.Instances) == 1 {
-		x := c.Instances[0]
-		if w.Device != nil || x.Cell == nil || len(x.Nets) != len(x.Cell.Ports) {
+	for _, x := range c.Instances {
+		if x.Cell == nil {
+			return nil
+		}
+		if x.Cell.parasitic(depth) {
+			continue
+		}
+		if w.Device != nil || len(x.Nets) != len(x.Cell.Ports) {
 			return nil
 		}
 		inner := x.Cell.wrapper(depth - 1)
@@ -66,7 +75,8 @@ func (c *Cell) wrapper(depth int) *Wrapper {
 			}
 			nets = append(nets, x.Nets[port])
 		}
-	} else if w.Device == nil || !c.parametric(w.Device) {
+	}
+	if w.Device == nil {
 		return nil
 	}
 	if len(nets) < 4 {
@@ -81,6 +91,30 @@ func (c *Cell) wrapper(depth int) *Wrapper {
 	}
 	return w
 }
+
+// parasitic says that a cell holds nothing but resistors, capacitors and junctions,
+// as the subckts of well diodes and contacts do.
+func (c *Cell) parasitic(depth int) bool {
+	if depth == 0 {
+		return false
+	}
+	for _, d := range c.Devices {
+		switch d.Kind {
+		case Resistor, Capacitor, Diode:
+		default:
+			return false
+		}
+	}
+	for _, x := range c.Instances {
+		if x.Cell == nil || !x.Cell.parasitic(depth-1) {
+			return false
+		}
+	}
+	return true
+}
+
+// shorts says that a source stands in the line only to measure its current.
+func (d *Device) shorts() bool { return d.Kind == VSource && d.Value.Err == nil && d.Value.V == 0 }
 
 // toPort follows series resistors from a net to a port. A net between a
 // transistor and a resistor has no other current, but for parasitics.
@@ -99,7 +133,7 @@ func (c *Cell) toPort(id NetID) (port int, series []*Device, ok bool) {
 		}
 		var next *Device
 		for _, p := range n.Pins {
-			if p.Device != nil && p.Device.Kind == Resistor && p.Device != last {
+			if p.Device != nil && (p.Device.Kind == Resistor || p.Device.shorts()) && p.Device != last {
 				if next != nil {
 					return 0, nil, false
 				}
@@ -130,7 +164,7 @@ func (c *Cell) parametric(d *Device) bool {
 	names := map[string]bool{}
 	for _, p := range d.Elem.Params {
 		switch parser.Fold(p.Name.Text) {
-		case "w", "l", "nfin":
+		case "w", "l", "wr", "lr", "nfin":
 			valueWords(names, p.Value)
 		}
 	}
