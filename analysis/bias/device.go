@@ -141,6 +141,9 @@ func (w *worker) temperature(d *circuit.Device) (float64, string) {
 func (w *worker) card(cell *circuit.Cell, d *circuit.Device, c *compiled) (mos.Card, bool) {
 	if d.Model == nil || (d.Model.Def == nil && len(d.Model.Bins) == 0) {
 		c.reason = fmt.Sprintf("model %q is not defined", d.Elem.Model.Text)
+		if len(w.run.Design.Sealed) > 0 {
+			c.reason = fmt.Sprintf("model %q is not in the text that can be read, and a block of it is encrypted: `*@ fit` gives a stand-in", d.Elem.Model.Text)
+		}
 		return mos.Card{}, false
 	}
 	card := mos.Card{Polarity: mos.NMOS, Params: map[string]float64{}}

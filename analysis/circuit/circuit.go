@@ -51,6 +51,7 @@ type Design struct {
 	Main     *Cell       // the top level, elaborated with its hierarchy
 	Alone    []*Cell     // subckts of the root document that nothing instantiates, elaborated with their defaults
 	Problems []Problem   // what went wrong in loading, one a cause
+	Sealed   []Place     // where each encrypted block begins; its text is never shown
 	TempC    float64     // `.temp` or `.option temp`, else 27
 	TnomC    float64     // `.option tnom`, else 27
 	Options  Options
@@ -99,7 +100,7 @@ type Scope struct {
 	Params   map[string][]*ParamDef // by folded name: ports' defaults first, then `.param`
 	Globals  map[string]bool        // top level only: folded names of `.global`
 	Initials []InitialAt
-	Open     bool     // an unresolved include or section may define more names here
+	Open     bool     // an unresolved include or section, or an encrypted block, may define more names here
 	Branch   *Branch  // where the definition of a subckt is conditional
 	Children []*Scope // the subckts defined directly here, in the order of the text
 

@@ -1,6 +1,10 @@
 package circuit
 
-import "triodeck/parser"
+import (
+	"strings"
+
+	"triodeck/parser"
+)
 
 // WidthMeaning says what the W of an instance line means where it has fingers.
 type WidthMeaning uint8
@@ -69,20 +73,45 @@ var classKinds = map[string]Kind{
 }
 
 // stated gives the fact that says what an element is whose model or subckt is
-// nowhere to be read: an X, or another letter that has no physics of its own.
+// nowhere to be read: an X, or another letter that has no physics of its own. An
+// annotation that fits a transistor to the name says it too.
 func (b *builder) stated(e *ElementAt) *Fact {
-	if len(b.options.Facts) == 0 || e.Model.IsZero() || kinds[e.Letter] != OtherKind {
+	if e.Model.IsZero() || kinds[e.Letter] != OtherKind {
 		return nil
 	}
-	return b.options.Facts.Find(factNames(e.Model), func(f *Fact) bool { return f.Class != "" })
+	names := factNames(e.Model)
+	for s := b.cell.Scope; s != nil; s = s.Parent {
+		for _, n := range s.Notes {
+			if fit, ok := n.Note.(*parser.Fit); ok && n.Err == nil && Match(parser.Fold(fit.Model.Text), names[0]) {
+				return &Fact{Class: parser.Fold(fit.Type.Text)}
+			}
+		}
+	}
+	return b.options.Facts.Find(names, func(f *Fact) bool { return f.Class != "" })
 }
 
-// pins gives the stated roles of an element's nodes, nil if nobody states them.
+// pins gives the roles of an element's nodes: as stated, else by the names of the
+// ports where there is an empty subckt; nil if neither tells.
 func (b *builder) pins(e *ElementAt) []int {
 	if fact := b.options.Facts.Find(factNames(e.Model), func(f *Fact) bool { return f.Pins != nil }); fact != nil {
 		return fact.Pins
 	}
-	return nil
+	def := b.cell.Env.subckt(parser.Fold(e.Model.Text))
+	if def == nil || len(def.Ports) != 4 {
+		return nil
+	}
+	var roles []int
+	seen := map[int]bool{}
+	for _, port := range def.Ports {
+		name := parser.Fold(port.Text)
+		role := strings.IndexByte("dgsb", name[0])
+		if role < 0 || seen[role] {
+			return nil
+		}
+		seen[role] = true
+		roles = append(roles, role)
+	}
+	return roles
 }
 
 func factNames(model parser.Word) []string { return []string{BaseName(parser.Fold(model.Text))} }

@@ -6,6 +6,7 @@ import (
 	"slices"
 
 	"triodeck/parser"
+	"triodeck/parser/source"
 )
 
 // loader is what stays between the rounds of one load.
@@ -47,6 +48,7 @@ type walk struct {
 	blocks   []*block
 	ended    bool // `.end` or its like was met
 	cut      bool // a cap was met
+	sealed   bool // behind `.protect`
 }
 
 // Load builds the design of a root deck. It does not fail: what is missing or
@@ -145,6 +147,9 @@ func (r *reading) card(w *walk, i int) {
 	}
 	c := w.doc.File.Card(i)
 	if c.Stmt == nil && len(c.Notes) == 0 {
+		if w.sealed && c.Kind == parser.OpaqueCard && !w.skipping() {
+			r.seal(w, i)
+		}
 		return
 	}
 	if c.Kind == parser.TitleCard && w.doc == r.design.Root && len(r.stack) == 1 {
@@ -206,11 +211,29 @@ func (r *reading) statement(w *walk, i int, c *parser.Card) {
 	case *parser.Temp, *parser.Options:
 		r.addSettings(w, i, c.Stmt)
 	case *parser.Other:
-		// What follows `.alter` changes the deck for a second run.
-		w.ended = parser.Fold(st.Name.Text) == ".alter"
+		r.other(w, st)
 	case *parser.End:
 		w.ended = true
 	}
+}
+
+func (r *reading) other(w *walk, st *parser.Other) {
+	switch parser.Fold(st.Name.Text) {
+	case ".alter": // what follows changes the deck for a second run
+		w.ended = true
+	case ".protect", ".prot":
+		w.sealed = true
+	case ".unprotect", ".unprot":
+		w.sealed = false
+	}
+}
+
+// seal notes an encrypted block, once: names that are found nowhere may be defined
+// in it.
+func (r *reading) seal(w *walk, i int) {
+	w.sealed = false
+	r.scope.Open = true
+	r.design.Sealed = append(r.design.Sealed, place(w.doc, i, source.Span{}))
 }
 
 func (r *reading) addParams(w *walk, i int, params []parser.Param) {

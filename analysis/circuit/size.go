@@ -49,14 +49,14 @@ func (b *builder) size(e *ElementAt, d *Device) {
 	got, ok := b.sizes[key]
 	if !ok {
 		s := &Size{NF: 1, Unit: d.Scale}
-		got = sized{s, b.fit(s, d)}
+		got = sized{s, b.fit(s, e, d)}
 		b.sizes[key] = got
 	}
 	d.Size, d.Model = got.size, got.model
 }
 
 // fit reads a size and gives the model to use with it.
-func (b *builder) fit(s *Size, d *Device) *Model {
+func (b *builder) fit(s *Size, e *ElementAt, d *Device) *Model {
 	m := d.Model
 	facts, names := b.options.Facts, b.cell.FactNames(d)
 	for _, q := range []struct {
@@ -79,6 +79,9 @@ func (b *builder) fit(s *Size, d *Device) *Model {
 	}
 	if s.NF <= 0 {
 		s.NF = 1
+	}
+	if m == nil && e.Letter == 'x' && b.pins(e) == nil {
+		s.Notes = append(s.Notes, "the nodes are assumed to be drain, gate, source and bulk in this order")
 	}
 	b.unit(s, facts, names, m)
 	s.W, s.L = s.W*s.Unit, s.L*s.Unit
