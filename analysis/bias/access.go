@@ -11,6 +11,9 @@ import (
 // there the channel of a square is below some tenfold of theirs. Common practice.
 const shortChannel = 0.35e-6
 
+// noAccess is the note of a short device without any.
+const noAccess = "access resistance is not included"
+
 // access adds the contact and access resistance that a card leaves out: as an
 // annotation states it, the nearest scope first, else as the settings do. The
 // note says what was done; a short device without any has one too.
@@ -31,7 +34,7 @@ func (w *worker) access(cell *circuit.Cell, d *circuit.Device, g *mos.Geometry) 
 		return "access resistance included: " + f.Source
 	}
 	if g.L > 0 && g.L < shortChannel {
-		return "access resistance is not included"
+		return noAccess
 	}
 	return ""
 }

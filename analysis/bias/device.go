@@ -90,9 +90,7 @@ func (w *worker) compile(cell *circuit.Cell, d *circuit.Device, m float64) *comp
 	if reason == "" {
 		reason = badTemp
 	}
-	if note := w.access(cell, d, &c.geometry); note != "" {
-		c.notes = append(c.notes, note)
-	}
+	access := w.access(cell, d, &c.geometry)
 	if card, ok := w.card(cell, d, c); ok {
 		c.polarity = card.Polarity
 		if c.reason = reason; reason == "" {
@@ -105,7 +103,13 @@ func (w *worker) compile(cell *circuit.Cell, d *circuit.Device, m float64) *comp
 			c.polarity, c.reason = card.Polarity, ""
 			c.notes = append(c.notes, note)
 			c.use(card, temp)
+			if access == noAccess {
+				access = "" // a fit is of the whole device
+			}
 		}
+	}
+	if access != "" && c.model != nil {
+		c.notes = append(c.notes, access)
 	}
 	return c
 }

@@ -165,18 +165,31 @@ func (e *Env) covered(m *Model) string {
 		}
 		joined = append(joined, b)
 	}
+	// Lengths with the same widths go together.
+	var widths []string
+	lengths := map[string][]string{}
+	for _, b := range joined {
+		w := span(b.w0, b.w1)
+		if lengths[w] == nil {
+			widths = append(widths, w)
+		}
+		lengths[w] = append(lengths[w], span(b.l0, b.l1))
+	}
 	var words []string
-	for i, b := range joined {
-		if i == maxRanges {
-			words = append(words, fmt.Sprintf("and %d ranges more", len(joined)-i))
+	left := maxRanges
+	for _, w := range widths {
+		l := lengths[w]
+		if len(l) > left {
+			words = append(words, fmt.Sprintf("and %d ranges more", len(joined)-maxRanges))
 			break
 		}
-		words = append(words, fmt.Sprintf("L %s with W %s", span(b.l0, b.l1), span(b.w0, b.w1)))
+		left -= len(l)
+		words = append(words, fmt.Sprintf("W %s at L %s", w, strings.Join(l, ", ")))
 	}
 	if len(words) == 0 {
 		return "nothing that could be evaluated"
 	}
-	return strings.Join(words, ", ")
+	return strings.Join(words, "; ")
 }
 
 func span(lo, hi float64) string {

@@ -2,6 +2,7 @@ package circuit
 
 import (
 	"fmt"
+	"strings"
 
 	"triodeck/analysis/quantity"
 	"triodeck/parser"
@@ -15,7 +16,9 @@ type Size struct {
 	Notes  []string // what is assumed, or known from elsewhere than the deck
 	Reason string   // why the size or the bin is not known; "" if both are
 
-	binless bool // Reason says that no bin covers the size
+	Binless bool // no bin covers the size: a problem of the design says it with what the bins cover
+
+	covered string // what they cover
 }
 
 // The spellings of a channel's size; the first that a line states counts.
@@ -105,8 +108,9 @@ func (b *builder) fit(s *Size, e *ElementAt, d *Device) *Model {
 		b.report(b.cell.Scope, err)
 	}
 	if choice.Model == nil {
-		s.Reason, s.binless = b.cell.Env.outside(m, s), len(choice.Failed) == 0
-		b.binless = b.binless || s.binless
+		s.Binless = len(choice.Failed) == 0
+		b.outside(s, m)
+		b.binless = b.binless || s.Binless
 		return m
 	}
 	b.overlap(choice)
@@ -184,17 +188,30 @@ func missingSize(s *Size) string {
 }
 
 // outside says that no bin covers a size, and what the bins cover.
-func (e *Env) outside(m *Model, s *Size) string {
+func (b *builder) outside(s *Size, m *Model) {
 	finger := ""
 	if s.NF != 1 {
 		finger = " a finger"
 	}
-	return fmt.Sprintf("no bin of model %q covers L = %s and W = %s%s: its bins cover %s", BaseName(m.Bins[0].Name),
-		metres(s.L), metres(s.W/s.NF), finger, e.covered(m))
+	env := b.cell.Env
+	s.Reason = fmt.Sprintf("no bin of model %q covers L = %s and W = %s%s", BaseName(m.Bins[0].Name), metres(s.L), metres(s.W/s.NF), finger)
+	if s.Unit != 1 && env.fits(m, s.L/s.Unit, s.W/s.Unit/s.NF) {
+		s.Reason += fmt.Sprintf(", which `.option scale=%g` has multiplied: W and L are to be written without a suffix here", s.Unit)
+	}
+	s.covered = "its bins cover " + env.covered(m)
 }
 
-// metres shows a length to as many digits as tell bins apart.
-func metres(x float64) string { return quantity.Digits(x, "m", 4) }
+// metres shows a length to as many digits as tell bins apart, without idle zeros.
+func metres(x float64) string {
+	number, unit, ok := strings.Cut(quantity.Digits(x, "m", 5), " ")
+	if strings.Contains(number, ".") {
+		number = strings.TrimRight(strings.TrimRight(number, "0"), ".")
+	}
+	if !ok {
+		return number
+	}
+	return number + " " + unit
+}
 
 // overlap reports a size that more than one bin covers, once a pair of bins.
 func (b *builder) overlap(c BinChoice) {
@@ -214,8 +231,8 @@ func (b *builder) reportBinless() {
 		return // the instances' lines will say it
 	}
 	say := func(at Place, model parser.Word, s *Size) {
-		if s != nil && s.binless {
-			b.problems.add(BinMissing, at, model.Text, "%s", s.Reason)
+		if s != nil && s.Binless {
+			b.problems.add(BinMissing, at, model.Text, "%s: %s", s.Reason, s.covered)
 		}
 	}
 	for _, d := range c.Devices {

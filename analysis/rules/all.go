@@ -16,6 +16,7 @@ var All = []*analysis.Rule{
 	IncludeMissing,
 	Structure,
 	Parameter,
+	Settings,
 	// Names and connection
 	DuplicateName,
 	ModelUndefined,
@@ -23,6 +24,7 @@ var All = []*analysis.Rule{
 	PinCount,
 	FloatingGate,
 	// Devices and bias
+	ModelBin,
 	ImplausibleGeometry,
 	ExpectationFailed,
 	RegionCrossed,

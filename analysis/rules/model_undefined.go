@@ -23,7 +23,7 @@ func modelUndefined(p *analysis.Pass) {
 	var m missings
 	for _, c := range p.Cells() {
 		for _, d := range c.Devices {
-			if d.Model == nil && needsModel(d) && !fitted(c.Scope, d.Elem.Model.Text) {
+			if d.Model == nil && needsModel(d) && !fitted(c.Scope, d.Elem.Model.Text) && !known(p.Design, c, d) {
 				m.add(c.Scope, d.Place, d.Elem)
 			}
 		}
@@ -45,6 +45,11 @@ func needsModel(d *circuit.Device) bool {
 		return d.Elem.Model.Text != ""
 	}
 	return false
+}
+
+// known says whether the settings give a stand-in for the model.
+func known(design *circuit.Design, c *circuit.Cell, d *circuit.Device) bool {
+	return design.Options.Facts.Find(c.FactNames(d), func(f *circuit.Fact) bool { return f.Fit != nil }) != nil
 }
 
 // fitted says whether the writer gives a stand-in for the model.

@@ -97,8 +97,14 @@ func (g *blanks) device(m part) {
 }
 
 // saidElsewhere: an undefined model is a finding of its own, and so is the file
-// that should have defined it.
+// that should have defined it; so is a size without a bin. An encrypted block is not: it is said here.
 func (g *blanks) saidElsewhere(d *bias.Device) bool {
+	if s := d.Device.Size; s != nil && s.Binless && g.pass.Closed() {
+		return true
+	}
+	if len(g.pass.Design.Sealed) > 0 {
+		return false
+	}
 	undefined := d.Device.Model == nil && needsModel(d.Device)
 	return undefined && d.Reason != "" && (g.pass.Whole() || !g.pass.Closed())
 }
