@@ -117,12 +117,17 @@ func (q query) included(path string) *circuit.Document {
 	return nil
 }
 
-// where names a place shortly: the file without its folder, and the line.
-func where(at circuit.Place) string {
+// where names a place shortly: the line, with the file's name without its folder
+// if that is another than the one asked about.
+func (q query) where(at circuit.Place) string {
 	if at.Doc == nil {
 		return ""
 	}
-	return fmt.Sprintf("%s:%d", filepath.Base(at.Doc.Path), at.Doc.File.Lines().Line(at.Span.Start)+1)
+	line := at.Doc.File.Lines().Line(at.Span.Start) + 1
+	if at.Doc.Path == q.doc.Path {
+		return fmt.Sprintf("line %d", line)
+	}
+	return name(fmt.Sprintf("%s:%d", filepath.Base(at.Doc.Path), line))
 }
 
 // code sets a text as code, whatever it holds.
@@ -140,14 +145,27 @@ func code(s string) string {
 }
 
 // name sets a name as it is where markdown reads nothing into it, else as code.
+// An underscore counts: some editors mark one inside a word as a mistake.
 func name(s string) string {
 	for i, r := range s {
 		inside := i > 0 && i < len(s)-1
 		switch {
-		case r >= 'a' && r <= 'z', r >= 'A' && r <= 'Z', r >= '0' && r <= '9', inside && strings.ContainsRune("_.-", r):
+		case r >= 'a' && r <= 'z', r >= 'A' && r <= 'Z', r >= '0' && r <= '9', inside && strings.ContainsRune(".-:", r):
 		default:
 			return code(s)
 		}
 	}
 	return s
+}
+
+// prose sets those words of a sentence as code that markdown would read
+// something into.
+func prose(s string) string {
+	words := strings.Split(s, " ")
+	for i, w := range words {
+		if core := strings.TrimRight(w, ",;:."); strings.ContainsAny(core, "_*<[\\") && !strings.Contains(core, "`") {
+			words[i] = code(core) + w[len(core):]
+		}
+	}
+	return strings.Join(words, " ")
 }

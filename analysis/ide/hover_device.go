@@ -33,7 +33,7 @@ func (q query) hoverDevice(card int, e *parser.Element) string {
 	} else {
 		b.WriteString(operatingTable(shown).String())
 		b.WriteString("\n")
-		for _, line := range remarks(shown) {
+		for _, line := range q.remarks(shown) {
 			b.WriteString("- " + line + "\n")
 		}
 	}
@@ -162,5 +162,5 @@ func notEvaluated(ops []operation) string {
 			texts = append(texts, text)
 		}
 	}
-	return "Not evaluated: " + strings.Join(texts, "; ") + ".\n"
+	return "Not evaluated: " + prose(strings.Join(texts, "; ")) + ".\n"
 }

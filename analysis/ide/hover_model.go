@@ -21,7 +21,7 @@ func (q query) hoverModel(p place, model string) string {
 	defs := scope.FindModel(folded)
 	if len(defs) == 0 {
 		if bins := scope.FindBins(folded); len(bins) > 0 {
-			return fmt.Sprintf("%s · %d bins · first defined at %s", code(model), len(bins), where(bins[0].Place))
+			return fmt.Sprintf("%s · %d bins · first defined at %s", code(model), len(bins), q.where(bins[0].Place))
 		}
 		if scope.FindSubckt(folded) != nil {
 			return q.hoverSubckt(p, model)
@@ -37,7 +37,7 @@ func (q query) hoverModel(p place, model string) string {
 	} else if def.Type == "nmos" || def.Type == "pmos" {
 		b.WriteString(", level 1 (not stated)")
 	}
-	fmt.Fprintf(&b, " · defined at %s\n\n", where(def.Place))
+	fmt.Fprintf(&b, " · defined at %s\n\n", q.where(def.Place))
 	t := &table{head: []string{"parameter", "value"}}
 	for _, key := range keyParams {
 		if v, ok := values[key]; ok {
@@ -135,7 +135,7 @@ func (q query) hoverSubckt(p place, name string) string {
 		return ""
 	}
 	var b strings.Builder
-	fmt.Fprintf(&b, "%s · subckt · defined at %s\n\n", code(def.Subckt.Name.Text), where(def.Place))
+	fmt.Fprintf(&b, "%s · subckt · defined at %s\n\n", code(def.Subckt.Name.Text), q.where(def.Place))
 	var ports, params []string
 	for _, w := range def.Ports {
 		ports = append(ports, code(w.Text))

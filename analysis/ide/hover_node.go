@@ -31,13 +31,13 @@ func (q query) hoverNode(p place, node string) string {
 		if several {
 			path = name(rows[0].path)
 		}
-		differ := slices.ContainsFunc(rows, func(l level) bool { return l.text() != rows[0].text() || l.from() != rows[0].from() })
+		differ := slices.ContainsFunc(rows, func(l level) bool { return l.text() != rows[0].text() || q.levelFrom(l) != q.levelFrom(rows[0]) })
 		if !differ && len(rows) > 1 {
-			t.add(path, "every", rows[0].text(), rows[0].from())
+			t.add(path, "every", rows[0].text(), q.levelFrom(rows[0]))
 			continue
 		}
 		for _, l := range rows {
-			t.add(path, name(l.mode), l.text(), l.from())
+			t.add(path, name(l.mode), l.text(), q.levelFrom(l))
 		}
 	}
 	cell, net := levels[0].context.Cell, levels[0].net
@@ -129,11 +129,12 @@ func (l level) text() string {
 	return voltSpread(l.lo, l.hi)
 }
 
-func (l level) from() string {
+func (q query) levelFrom(l level) string {
 	if !l.known {
 		return "annotate it: " + code("*@ bias v("+l.context.Cell.Nets[l.net].Spelt+")=…")
 	}
-	return voltageFrom(l.source)
+	why, at := q.voltageFrom(l.source)
+	return joined(" at ", why, at)
 }
 
 // hanging lists the terminals on a net.

@@ -37,7 +37,7 @@ func (q query) hoverNote(p place, m mark) string {
 	switch n := a.Note.(type) {
 	case nil:
 		if a.Err != nil {
-			return "This annotation is not understood: " + a.Err.Message
+			return "This annotation is not understood: " + prose(a.Err.Message)
 		}
 		return ""
 	case *parser.Bias:
@@ -121,7 +121,7 @@ func outcome(c bias.Check) string {
 		at = append(at, "at "+name(c.Corner))
 	}
 	if c.At != "" {
-		at = append(at, "with "+c.At)
+		at = append(at, "with "+prose(c.At))
 	}
 	place := strings.Join(at, " ")
 	switch c.Status {
@@ -134,5 +134,5 @@ func outcome(c bias.Check) string {
 		}
 		return text
 	}
-	return "not judged: " + c.Reason
+	return "not judged: " + prose(c.Reason)
 }

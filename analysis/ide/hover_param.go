@@ -27,7 +27,7 @@ func (q query) hoverParam(p place, m mark) string {
 		for _, a := range f.Args {
 			args = append(args, a.Text)
 		}
-		return fmt.Sprintf("%s = %s · defined at %s", code(f.Name.Text+"("+strings.Join(args, ", ")+")"), code(f.Body.Text), where(def.Place))
+		return fmt.Sprintf("%s = %s · defined at %s", code(f.Name.Text+"("+strings.Join(args, ", ")+")"), code(f.Body.Text), q.where(def.Place))
 	}
 	values, left := q.paramValues(scope, name, m.unit)
 	fmt.Fprintf(&b, "%s = ", code(m.text))
@@ -42,7 +42,7 @@ func (q query) hoverParam(p place, m mark) string {
 	if def.Value.Form == parser.ExprValue || def.Value.Form == parser.NameValue {
 		b.WriteString(" · from " + code(def.Value.Text))
 	}
-	fmt.Fprintf(&b, " · defined at %s", where(def.Place))
+	fmt.Fprintf(&b, " · defined at %s", q.where(def.Place))
 	if len(values) > 1 {
 		b.WriteString("\n\none value for each set of instances")
 	}
@@ -61,7 +61,7 @@ func (q query) paramValues(scope *circuit.Scope, name, unit string) (values []st
 		}
 		text := exact(v.V, unit)
 		if v.Err != nil {
-			text = "not evaluated (" + v.Err.Error() + ")"
+			text = "not evaluated (" + prose(v.Err.Error()) + ")"
 		}
 		if slices.Contains(values, text) {
 			continue
@@ -95,7 +95,7 @@ func (q query) hoverKey(p place, m mark) string {
 		}
 		text := exact(v.V, m.unit)
 		if v.Err != nil {
-			text = "not evaluated (" + v.Err.Error() + ")"
+			text = "not evaluated (" + prose(v.Err.Error()) + ")"
 		}
 		if !slices.Contains(values, text) && len(values) < maxValues {
 			values = append(values, text)

@@ -17,7 +17,7 @@ type remark struct{ path, mode, text string }
 // remarks are the lines under the table: the bias, where the extremes lie, how
 // far the small-Vds law holds, where the voltages come from, and what else to
 // know.
-func remarks(ops []operation) []string {
+func (q query) remarks(ops []operation) []string {
 	var list []remark
 	add := func(o operation, texts ...string) {
 		for _, t := range texts {
@@ -37,7 +37,7 @@ func remarks(ops []operation) []string {
 	}
 	for i, o := range ops {
 		if i == 0 || ops[i-1].path != o.path {
-			text := origin(slices.DeleteFunc(slices.Clone(ops), func(x operation) bool { return x.path != o.path }))
+			text := q.origin(slices.DeleteFunc(slices.Clone(ops), func(x operation) bool { return x.path != o.path }))
 			list = append(list, remark{o.path, everyMode, text})
 		}
 	}
@@ -45,7 +45,7 @@ func remarks(ops []operation) []string {
 	for _, o := range ops {
 		for _, p := range o.parts {
 			for _, note := range p.Notes {
-				if !slices.Contains(lines, note) {
+				if note = prose(note); !slices.Contains(lines, note) {
 					lines = append(lines, note)
 				}
 			}
@@ -80,7 +80,7 @@ func headed(list []remark, ops []operation) []string {
 		if severalModes(ops) && r.mode != everyMode && (modes == 1 || same < modes) {
 			prefix = joined(" ", prefix, name(r.mode))
 		}
-		if line := joined(": ", prefix, r.text); !slices.Contains(lines, line) {
+		if line := joined(": ", prefix, prose(r.text)); !slices.Contains(lines, line) {
 			lines = append(lines, line)
 		}
 	}
@@ -183,13 +183,13 @@ func (o operation) law() string {
 }
 
 // origin names the nodes of an instance's terminals by what their voltages come
-// from: "v(s), v(in) annotated at a.sp:9; v(clk) fixed by Vclk at a.sp:4".
-func origin(modes []operation) string {
+// from: "v(s), v(in) annotated at line 9; v(clk) fixed by Vclk at line 4".
+func (q query) origin(modes []operation) string {
 	first := modes[0].parts[0]
 	var order []string
 	nodes := map[string][]string{}
 	for i, net := range first.Device.Device.Nets {
-		from := originOf(modes, i)
+		from := q.originOf(modes, i)
 		node := code("v(" + first.context.Cell.Nets[net].Spelt + ")")
 		if nodes[from] == nil {
 			order = append(order, from)
@@ -210,33 +210,39 @@ func origin(modes []operation) string {
 
 // originOf says where the voltage of a terminal comes from, mode by mode if the
 // modes differ.
-func originOf(modes []operation, terminal int) string {
-	var all, texts []string
+func (q query) originOf(modes []operation, terminal int) string {
+	var whys, places, each []string
 	for _, o := range modes {
 		p := o.parts[0]
 		if terminal >= len(p.Device.Device.Nets) {
-			continue
+			return "not known"
 		}
-		from := voltageFrom(p.context.Nodes[p.Device.Device.Nets[terminal]])
-		if !slices.Contains(all, from) {
-			all = append(all, from)
+		why, at := q.voltageFrom(p.context.Nodes[p.Device.Device.Nets[terminal]])
+		whys = append(whys, why)
+		places = append(places, at)
+		each = append(each, joined(" at ", why, at)+" in "+name(o.mode))
+	}
+	sameWhy, samePlace := len(slices.Compact(slices.Clone(whys))) == 1, len(slices.Compact(slices.Clone(places))) == 1
+	switch {
+	case sameWhy && samePlace:
+		return joined(" at ", whys[0], places[0])
+	case sameWhy && !slices.Contains(places, ""):
+		var texts []string
+		for i, o := range modes {
+			texts = append(texts, places[i]+" in "+name(o.mode))
 		}
-		texts = append(texts, from+" in "+name(o.mode))
+		return whys[0] + " at " + strings.Join(texts, ", ")
 	}
-	if len(all) == 1 {
-		return all[0]
-	}
-	return strings.Join(texts, ", ")
+	return strings.Join(each, ", ")
 }
 
 // voltageFrom says where a voltage comes from.
-func voltageFrom(v bias.Voltage) string {
+func (q query) voltageFrom(v bias.Voltage) (why, at string) {
 	if v.V == nil {
-		return "not known"
+		return "not known", ""
 	}
-	text := v.Why
-	if text == "" {
-		text = v.Source.String()
+	if why = v.Why; why == "" {
+		why = v.Source.String()
 	}
-	return joined(" at ", text, where(v.Place))
+	return prose(why), q.where(v.Place)
 }

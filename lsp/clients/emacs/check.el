@@ -81,7 +81,7 @@
 
 (check-hover "^M_s" "M_sw · NMOS · nch, level 1 · W/L = 4 µm / 180 nm")
 (check-hover "^M_s" "deep triode  116–229 Ω")
-(check-hover "^M_sw +s" "0.095–0.595 V  annotated at first_draft.sp:")
+(check-hover "^M_sw +s" "0.095–0.595 V  annotated at line ")
 
 ;; A mended line loses its finding.
 (goto-char (point-min))

@@ -78,7 +78,7 @@ local device = hover([[^M_sw]])
 holds(device, "`M_sw` · NMOS · `nch`, level 1 · W/L = 4 µm / 180 nm")
 holds(device, "| region      | Ron       |")
 holds(device, "| deep triode | 116–229 Ω |")
-holds(hover([[^M_sw\s\+\zssamp]]), "| 0.095–0.595 V | annotated at first_draft.sp:")
+holds(hover([[^M_sw\s\+\zssamp]]), "| 0.095–0.595 V | annotated at line ")
 holds(hover([[^C_hold samp 0 \zs2p]]), "`2p` = 2 pF (2e-12)")
 
 -- A mended line loses its finding: the model's name as it should be.
