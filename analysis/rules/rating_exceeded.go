@@ -25,6 +25,15 @@ var RatingExceeded = &analysis.Rule{
 func ratingExceeded(p *analysis.Pass) {
 	worst := map[ratedKey]*excess{}
 	var order []ratedKey
+	keep := func(x *excess) {
+		key := ratedKey{keyOf(x.m.Card), bias.Canonical(x.cond.Name)}
+		if was := worst[key]; was == nil {
+			order = append(order, key)
+			worst[key] = x
+		} else if x.by > was.by {
+			*was = *x
+		}
+	}
 	for m := range parts(p.Bias) {
 		if m.Points == nil {
 			continue
@@ -35,26 +44,24 @@ func ratingExceeded(p *analysis.Pass) {
 				continue
 			}
 			for _, cond := range r.Conds {
-				x, ok := exceeds(m, n, cond)
-				if !ok {
-					continue
-				}
-				key := ratedKey{keyOf(m.Card), bias.Canonical(cond.Name)}
-				if was := worst[key]; was == nil {
-					order = append(order, key)
-					worst[key] = x
-				} else if x.by > was.by {
-					*was = *x
+				if x, ok := exceeds(m, n, cond); ok {
+					keep(x)
 				}
 			}
+		}
+		for _, x := range statedExcesses(m, p.Design) {
+			keep(x)
 		}
 	}
 	for _, key := range order {
 		x := worst[key]
-		p.Report(analysis.Finding{
-			Severity: p.Rule.Severity, Place: x.m.Name(), Subject: x.m.subject(), Message: x.message(),
-			Related: []analysis.Related{{Place: x.at, Message: "the rating stands here"}},
-		})
+		f := analysis.Finding{Severity: p.Rule.Severity, Place: x.m.Name(), Subject: x.m.subject(), Message: x.message()}
+		if x.source == "" {
+			f.Related = []analysis.Related{{Place: x.at, Message: "the rating stands here"}}
+		} else {
+			f.Message += " (" + x.source + ")"
+		}
+		p.Report(f)
 	}
 }
 
@@ -67,6 +74,7 @@ type ratedKey struct {
 type excess struct {
 	m      part
 	at     circuit.Place // of the rating
+	source string        // who states it, where it stands in the settings
 	cond   parser.Compare
 	value  float64 // SI, magnitude
 	limit  float64
@@ -92,16 +100,25 @@ func exceeds(m part, n circuit.NoteAt, cond parser.Compare) (*excess, bool) {
 		return nil, false
 	}
 	limit, err := m.Context.Cell.Env.Eval(cond.Lo)
-	e, ok := m.Range(cond.Name)
-	if err != nil || !ok || limit <= 0 {
+	if err != nil {
 		return nil, false
 	}
-	x := &excess{m: m, at: analysis.Within(n.Place, cond.Span), cond: cond, limit: limit, value: math.Abs(e.Max), sample: e.AtMax}
+	x := &excess{m: m, at: analysis.Within(n.Place, cond.Span), cond: cond}
+	return x, x.reaches(limit)
+}
+
+// reaches holds the device's worst sample against a limit.
+func (x *excess) reaches(limit float64) bool {
+	e, ok := x.m.Range(x.cond.Name)
+	if !ok || limit <= 0 {
+		return false
+	}
+	x.limit, x.value, x.sample = limit, math.Abs(e.Max), e.AtMax
 	if v := math.Abs(e.Min); v > x.value {
 		x.value, x.sample = v, e.AtMin
 	}
 	x.by = x.value / limit
-	return x, x.by > 1 && !math.IsInf(x.value, 0)
+	return x.by > 1 && !math.IsInf(x.value, 0)
 }
 
 // notesFor gives the annotations whose scope holds a part: its own cell's, those
