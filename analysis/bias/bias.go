@@ -52,6 +52,8 @@ type Context struct {
 	Nodes    []Voltage // by NetID
 	Devices  []*Device // every MOSFET of the cell, in card order
 	Children []Child   // in card order
+
+	named map[string][]*Device // by folded name, in a cell of many devices
 }
 
 // Axis is a ranged node: its voltage at each sample.

@@ -75,6 +75,7 @@ func (w *worker) context(cell *circuit.Cell, f frame) *Context {
 			c.Devices = append(c.Devices, w.device(cell, d, c, f.m))
 		}
 	}
+	c.index()
 	globals := f.globals
 	if f.ports == nil {
 		globals = map[string]Voltage{}

@@ -49,9 +49,31 @@ func targets(path string, c *Context, n circuit.NoteAt, e *parser.Expect) []targ
 	return c.find(prefix, pattern)
 }
 
+// manyDevices is from where on a cell has an index of its devices' names: flat
+// decks name thousands of them, one by one.
+const manyDevices = 16
+
+func (c *Context) index() {
+	if len(c.Devices) < manyDevices {
+		return
+	}
+	c.named = make(map[string][]*Device, len(c.Devices))
+	for _, d := range c.Devices {
+		c.named[d.Device.Name] = append(c.named[d.Device.Name], d)
+	}
+}
+
+// candidates are the devices of a cell that may fit a pattern.
+func (c *Context) candidates(pattern string) []*Device {
+	if c.named == nil || strings.ContainsAny(pattern, "*?") {
+		return c.Devices
+	}
+	return c.named[pattern]
+}
+
 func (c *Context) find(prefix, pattern string) []target {
 	var out []target
-	for _, d := range c.Devices {
+	for _, d := range c.candidates(pattern) {
 		if Match(pattern, d.Device.Name) {
 			out = append(out, target{prefix + d.Device.Spelt, c, d})
 		}

@@ -34,13 +34,18 @@ func ratingExceeded(p *analysis.Pass) {
 			*was = *x
 		}
 	}
+	ratings := map[*circuit.Scope][]circuit.NoteAt{}
 	for m := range parts(p.Bias) {
 		if m.Points == nil {
 			continue
 		}
-		for _, n := range notesFor(m, p.Design) {
-			r, ok := n.Note.(*parser.Rating)
-			if !ok || n.Err != nil || !rated(r, m) {
+		scope := m.Context.Cell.Scope
+		if _, ok := ratings[scope]; !ok {
+			ratings[scope] = ratingsIn(scope, p.Design)
+		}
+		for _, n := range ratings[scope] {
+			r := n.Note.(*parser.Rating)
+			if !rated(r, m) {
 				continue
 			}
 			for _, cond := range r.Conds {
@@ -121,17 +126,24 @@ func (x *excess) reaches(limit float64) bool {
 	return x.by > 1 && !math.IsInf(x.value, 0)
 }
 
-// notesFor gives the annotations whose scope holds a part: its own cell's, those
-// around it in the text, and the deck's.
-func notesFor(m part, d *circuit.Design) []circuit.NoteAt {
+// ratingsIn gives the ratings that hold in a scope: its own, those around it in
+// the text, and the deck's.
+func ratingsIn(scope *circuit.Scope, d *circuit.Design) []circuit.NoteAt {
 	var list []circuit.NoteAt
+	add := func(s *circuit.Scope) {
+		for _, n := range s.Notes {
+			if _, ok := n.Note.(*parser.Rating); ok && n.Err == nil {
+				list = append(list, n)
+			}
+		}
+	}
 	top := false
-	for s := m.Context.Cell.Scope; s != nil; s = s.Parent {
-		list = append(list, s.Notes...)
+	for s := scope; s != nil; s = s.Parent {
+		add(s)
 		top = top || s == d.Top
 	}
 	if !top {
-		list = append(list, d.Top.Notes...)
+		add(d.Top)
 	}
 	return list
 }

@@ -23,6 +23,7 @@ vim.o.background = "light"
 for group, colour in pairs(colours) do
   vim.api.nvim_set_hl(0, group, colour)
 end
+vim.o.fillchars = "eob: "
 vim.o.number, vim.o.laststatus, vim.o.ruler, vim.o.showmode, vim.o.shortmess = true, 0, false, false, "FIc"
 vim.lsp.handlers["textDocument/hover"] = vim.lsp.with(vim.lsp.handlers.hover, { border = "rounded", max_width = 200 })
 vim.diagnostic.config({ virtual_text = false, signs = false })
