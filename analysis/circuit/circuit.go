@@ -34,7 +34,7 @@ type Place struct {
 
 // Options change how a design is built; a corner sets them.
 type Options struct {
-	Section string            // replaces the section of the root deck's `.lib file section` calls, where the file has such a section
+	Section string            // replaces the section of `.lib file section` calls outside libraries' own sections, where the file has such a section
 	Params  map[string]string // overrides of top-level parameters, by folded name: an expression's text
 	Roots   []string          // folders to look for includes in, after the including file's own
 	TempC   *float64          // °C, in place of the deck's own temperature

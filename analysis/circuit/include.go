@@ -78,6 +78,17 @@ func (r *reading) locate(from *Document, written string) (doc *Document, near st
 	return nil, near, failure
 }
 
+// inSection says that a section of a library is being read: what it calls in turn
+// is the library's own affair.
+func (r *reading) inSection() bool {
+	for _, w := range r.stack {
+		if w.section != "" {
+			return true
+		}
+	}
+	return false
+}
+
 // behindVariable gives a path without the variable or `~` that it starts with.
 func behindVariable(path string) (rest string, ok bool) {
 	if !strings.HasPrefix(path, "$") && !strings.HasPrefix(path, "~") {
@@ -100,7 +111,7 @@ func (r *reading) include(w *walk, card int, path parser.Word, wanted parser.Wor
 		return
 	}
 	name := parser.Fold(wanted.Text)
-	if swap := parser.Fold(r.options.Section); swap != "" && name != "" && w.doc == r.design.Root {
+	if swap := parser.Fold(r.options.Section); swap != "" && name != "" && !r.inSection() {
 		if _, ok := r.sectionsOf(doc.File).find(swap); ok {
 			name = swap
 		}

@@ -145,6 +145,10 @@ func (s *Snapshot) roots(files []string) []string {
 		if err != nil {
 			continue
 		}
+		folders := []string{filepath.Dir(path)}
+		if set := s.Settings(path); set != nil {
+			folders = append(folders, set.Roots...)
+		}
 		for i := range f.Len() {
 			var target parser.Word
 			switch stmt := f.Card(i).Stmt.(type) {
@@ -156,11 +160,14 @@ func (s *Snapshot) roots(files []string) []string {
 				continue
 			}
 			to := filepath.FromSlash(target.Text)
-			if !filepath.IsAbs(to) {
-				to = filepath.Join(filepath.Dir(path), to)
-			}
-			if to = filepath.Clean(to); to != path {
-				included[to] = true
+			for _, folder := range folders {
+				at := to
+				if !filepath.IsAbs(to) {
+					at = filepath.Join(folder, to)
+				}
+				if at = filepath.Clean(at); at != path {
+					included[at] = true
+				}
 			}
 		}
 	}
