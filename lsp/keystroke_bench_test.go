@@ -72,3 +72,26 @@ func TestLargeDeck(t *testing.T) {
 		t.Errorf("it took %v", d)
 	}
 }
+
+// BenchmarkHints asks for the hints of a whole large deck at once, and of what a
+// window shows.
+func BenchmarkHints(b *testing.B) {
+	c := dial(b, rules.All)
+	c.initialize("utf-8")
+	path := home("large.sp")
+	c.open(path, largeDeck(10000))
+	c.idle()
+	for _, n := range []int{60, 10000} {
+		b.Run(fmt.Sprintf("%d of 10000 lines", n), func(b *testing.B) {
+			for b.Loop() {
+				m := c.call("textDocument/inlayHint", map[string]any{
+					"textDocument": map[string]any{"uri": uriOf(path)},
+					"range":        map[string]any{"start": map[string]any{"line": 0, "character": 0}, "end": map[string]any{"line": n, "character": 0}},
+				})
+				if m.Error != nil {
+					b.Fatal(m.Error)
+				}
+			}
+		})
+	}
+}

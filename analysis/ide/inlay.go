@@ -39,7 +39,7 @@ func InlayHints(ctx context.Context, deck *workspace.Deck, path string, span sou
 		return nil
 	}
 	first, last := max(0, f.CardAt(span.Start)), min(f.CardAt(span.End), f.Len()-1)
-	seen := map[*parser.Subckt][]sighting{}
+	seen := map[*parser.Subckt]map[*parser.Element][]spotted{}
 	var hints []Hint
 	body := q.body(first)
 	for i := first; i <= last; i++ {
@@ -51,9 +51,9 @@ func InlayHints(ctx context.Context, deck *workspace.Deck, path string, span sou
 			continue
 		}
 		if _, ok := seen[body]; !ok {
-			seen[body] = sightings(result, body)
+			seen[body] = byElement(sightings(result, body))
 		}
-		if text := hintText(operations(seen[body], e)); text != "" {
+		if text := hintText(grouped(seen[body][e])); text != "" {
 			hints = append(hints, Hint{Offset: f.Start(i) + textEnd(f.Card(i).Text), Text: text})
 		}
 	}

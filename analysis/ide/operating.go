@@ -26,20 +26,45 @@ type part struct {
 // operations lists what a MOSFET's card does: in every mode, in every distinct
 // instance of its subckt.
 func operations(seen []sighting, e *parser.Element) []operation {
-	var out []operation
+	var list []spotted
 	for _, s := range seen {
 		for _, d := range s.context.Devices {
-			if d.Device.Elem != e {
-				continue
+			if d.Device.Elem == e {
+				list = append(list, spotted{s, d})
 			}
-			p := part{s.run.Corner, s.context, d}
-			i := slices.IndexFunc(out, func(o operation) bool { return o.path == s.path && o.mode == s.run.Mode })
-			if i < 0 {
-				i = len(out)
-				out = append(out, operation{path: s.path, mode: s.run.Mode})
-			}
-			out[i].parts = append(out[i].parts, p)
 		}
+	}
+	return grouped(list)
+}
+
+// spotted is a device where one run and instance sees it.
+type spotted struct {
+	sighting
+	device *bias.Device
+}
+
+// byElement sorts every device of a body by its card, for questions about many.
+func byElement(seen []sighting) map[*parser.Element][]spotted {
+	out := map[*parser.Element][]spotted{}
+	for _, s := range seen {
+		for _, d := range s.context.Devices {
+			out[d.Device.Elem] = append(out[d.Device.Elem], spotted{s, d})
+		}
+	}
+	return out
+}
+
+// grouped makes operations of one device's sightings.
+func grouped(list []spotted) []operation {
+	var out []operation
+	for _, s := range list {
+		p := part{s.run.Corner, s.context, s.device}
+		i := slices.IndexFunc(out, func(o operation) bool { return o.path == s.path && o.mode == s.run.Mode })
+		if i < 0 {
+			i = len(out)
+			out = append(out, operation{path: s.path, mode: s.run.Mode})
+		}
+		out[i].parts = append(out[i].parts, p)
 	}
 	// An instance's modes together, instances in the order of their first mention.
 	order := map[string]int{}
