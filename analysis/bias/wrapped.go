@@ -1,5 +1,7 @@
 package bias
 
+import "slices"
+
 // Wrapped gives the MOSFET that an instance stands for: to its writer the X line
 // is the device, as foundries wrap their transistors. The row's path is the
 // instance's local name; ok is false if the instance is no wrapper.
@@ -12,11 +14,12 @@ func (ch Child) Wrapped() (row Row, ok bool) {
 		return Row{}, false
 	}
 	c := ch.Context
-	for range w.Path {
-		if len(c.Children) != 1 || c.Children[0].Context == nil {
+	for _, inner := range w.Path { // parasitics may stand beside it
+		at := slices.IndexFunc(c.Children, func(x Child) bool { return x.Instance == inner })
+		if at < 0 || c.Children[at].Context == nil {
 			return Row{}, false
 		}
-		c = c.Children[0].Context
+		c = c.Children[at].Context
 	}
 	for _, d := range c.Devices {
 		if d.Device == w.Device {

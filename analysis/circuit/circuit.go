@@ -186,6 +186,8 @@ type Cell struct {
 	index     sync.Once
 	devices   map[string]*Device
 	instances map[string]*Instance
+	wrapOnce  sync.Once
+	wrap      *Wrapper
 }
 
 // NetID indexes Cell.Nets.

@@ -4,7 +4,7 @@ import "triodeck/parser"
 
 // Wrapper is a subckt that stands for one MOSFET, as foundries write them: the
 // transistor, its model bins, perhaps series resistors and parasitic junctions on
-// their own or in subckts, perhaps another wrapper in between.
+// their own or in subckts, perhaps dummies, perhaps another wrapper in between.
 type Wrapper struct {
 	Path   []*Instance  // from the cell to the transistor's own; empty if they are one
 	Cell   *Cell        // the transistor's own cell
@@ -25,7 +25,10 @@ func (c *Cell) Wrapped() (*Device, bool) {
 // must reach a port or a global net, and the geometry must come in by a parameter or
 // the model stand inside; a switch that a designer put into a subckt has neither,
 // and keeps its inner name, as does one with annotations inside.
-func (c *Cell) Wrapper() *Wrapper { return c.wrapper(maxWrapping) }
+func (c *Cell) Wrapper() *Wrapper {
+	c.wrapOnce.Do(func() { c.wrap = c.wrapper(maxWrapping) })
+	return c.wrap
+}
 
 // maxWrapping is how many wrappers may stand inside each other.
 const maxWrapping = 4
@@ -39,6 +42,9 @@ func (c *Cell) wrapper(depth int) *Wrapper {
 	for _, d := range c.Devices {
 		switch d.Kind {
 		case MOSFET:
+			if idle(d.Nets) {
+				continue
+			}
 			if w.Device != nil || !c.parametric(d) {
 				return nil
 			}
@@ -59,22 +65,27 @@ func (c *Cell) wrapper(depth int) *Wrapper {
 		if x.Cell.parasitic(depth) {
 			continue
 		}
-		if w.Device != nil || len(x.Nets) != len(x.Cell.Ports) {
+		if len(x.Nets) != len(x.Cell.Ports) {
 			return nil
 		}
 		inner := x.Cell.wrapper(depth - 1)
 		if inner == nil {
 			return nil
 		}
-		w.Cell, w.Device, w.Series = inner.Cell, inner.Device, inner.Series
-		w.Path = append([]*Instance{x}, inner.Path...)
-		for _, port := range inner.Ports {
-			if port < 0 {
-				nets = append(nets, -1)
-				continue
+		reached := make([]NetID, len(inner.Ports))
+		for t, port := range inner.Ports {
+			if reached[t] = -1; port >= 0 {
+				reached[t] = x.Nets[port]
 			}
-			nets = append(nets, x.Nets[port])
 		}
+		if idle(reached) {
+			continue
+		}
+		if w.Device != nil {
+			return nil
+		}
+		w.Cell, w.Device, w.Series, nets = inner.Cell, inner.Device, inner.Series, reached
+		w.Path = append([]*Instance{x}, inner.Path...)
 	}
 	if w.Device == nil {
 		return nil
@@ -90,6 +101,12 @@ func (c *Cell) wrapper(depth int) *Wrapper {
 		w.Ports[t], w.Series[t] = port, append(series, w.Series[t]...)
 	}
 	return w
+}
+
+// idle says that a transistor's gate, bulk and one end of the channel are one net,
+// as those of the dummies at the ends of a row: it is off whatever happens.
+func idle(nets []NetID) bool {
+	return len(nets) == 4 && nets[1] >= 0 && nets[1] == nets[3] && (nets[0] == nets[1] || nets[2] == nets[1])
 }
 
 // parasitic says that a cell holds nothing but resistors, capacitors and junctions,
