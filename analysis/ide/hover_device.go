@@ -18,11 +18,14 @@ const (
 
 // hoverDevice tells a MOSFET's region, resistance and bias in every mode.
 func (q query) hoverDevice(card int, e *parser.Element) string {
-	body := q.body(card)
-	ops := operations(sightings(q.deck.Bias(q.ctx), body), e)
+	ops := operations(sightings(q.deck.Bias(q.ctx), q.body(card)), e)
 	if len(ops) == 0 {
 		return deviceHead(e, nil) + "\n\nNot evaluated: nothing in the deck leads to this card.\n"
 	}
+	return q.hoverOperations(card, e, ops)
+}
+
+func (q query) hoverOperations(card int, e *parser.Element, ops []operation) string {
 	first := ops[0].parts[0]
 	var b strings.Builder
 	b.WriteString(deviceHead(e, first.Device))
@@ -38,7 +41,7 @@ func (q query) hoverDevice(card int, e *parser.Element) string {
 		}
 	}
 	if left > 0 {
-		fmt.Fprintf(&b, "\nand %d more %s of %s\n", left, plural(left, "instance"), code(body.Name.Text))
+		fmt.Fprintf(&b, "\nand %d more %s of %s\n", left, plural(left, "instance"), code(q.body(card).Name.Text))
 	}
 	return b.String()
 }

@@ -159,14 +159,25 @@ func (q query) hoverSubckt(p place, name string) string {
 			others++
 		}
 	}
-	fmt.Fprintf(&b, "- holds %d %s and %d other %s\n", mosfets, plural(mosfets, "MOSFET"), others, plural(others, "element"))
+	switch {
+	case mosfets == 0:
+		fmt.Fprintf(&b, "- holds %d %s\n", others, plural(others, "element"))
+	case others == 0:
+		fmt.Fprintf(&b, "- holds %d %s\n", mosfets, plural(mosfets, "MOSFET"))
+	default:
+		fmt.Fprintf(&b, "- holds %d %s and %d other %s\n", mosfets, plural(mosfets, "MOSFET"), others, plural(others, "element"))
+	}
 	return b.String()
 }
 
-// hoverInstance tells what an X line calls.
+// hoverInstance tells what an X line calls; where that wraps one MOSFET, the line
+// is the MOSFET to its writer.
 func (q query) hoverInstance(card int, e *parser.Element) string {
 	if e.Model.IsZero() {
 		return ""
+	}
+	if ops := operations(sightings(q.deck.Bias(q.ctx), q.body(card)), e); len(ops) > 0 {
+		return q.hoverOperations(card, e, ops)
 	}
 	return q.hoverSubckt(place{card: card, Card: q.doc.File.Card(card)}, e.Model.Text)
 }

@@ -188,9 +188,10 @@ func (q query) origin(modes []operation) string {
 	first := modes[0].parts[0]
 	var order []string
 	nodes := map[string][]string{}
-	for i, net := range first.Device.Device.Nets {
+	for i := range first.Device.Device.Nets {
 		from := q.originOf(modes, i)
-		node := code("v(" + first.context.Cell.Nets[net].Spelt + ")")
+		node, _ := first.node(i)
+		node = code("v(" + node + ")")
 		if nodes[from] == nil {
 			order = append(order, from)
 		}
@@ -217,7 +218,8 @@ func (q query) originOf(modes []operation, terminal int) string {
 		if terminal >= len(p.Device.Device.Nets) {
 			return "not known"
 		}
-		why, at := q.voltageFrom(p.context.Nodes[p.Device.Device.Nets[terminal]])
+		_, v := p.node(terminal)
+		why, at := q.voltageFrom(v)
 		whys = append(whys, why)
 		places = append(places, at)
 		each = append(each, joined(" at ", why, at)+" in "+name(o.mode))

@@ -47,7 +47,7 @@ func InlayHints(ctx context.Context, deck *workspace.Deck, path string, span sou
 			body = q.body(i)
 		}
 		e, ok := f.Card(i).Stmt.(*parser.Element)
-		if !ok || e.Letter != 'm' || f.Card(i).Kind != parser.ElementCard {
+		if !ok || e.Letter != 'm' && e.Letter != 'x' || f.Card(i).Kind != parser.ElementCard {
 			continue
 		}
 		if _, ok := seen[body]; !ok {

@@ -21,34 +21,53 @@ type part struct {
 	corner  string
 	context *bias.Context
 	*bias.Device
+	call *call // of a wrapped device
 }
 
-// operations lists what a MOSFET's card does: in every mode, in every distinct
-// instance of its subckt.
-func operations(seen []sighting, e *parser.Element) []operation {
-	var list []spotted
-	for _, s := range seen {
-		for _, d := range s.context.Devices {
-			if d.Device.Elem == e {
-				list = append(list, spotted{s, d})
-			}
-		}
+// call is an instance line that stands for the one MOSFET inside, with the context
+// in which it is written.
+type call struct {
+	outer *bias.Context
+	bias.Child
+}
+
+// node is the node at a terminal, as the writer of the card names it, with its
+// voltage.
+func (p part) node(terminal int) (string, bias.Voltage) {
+	net := p.Device.Device.Nets[terminal]
+	n := p.context.Cell.Nets[net]
+	if p.call != nil && p.call.Context == p.context && n.Port >= 0 && n.Port < len(p.call.Instance.Nets) {
+		outer := p.call.Instance.Nets[n.Port]
+		return p.call.outer.Cell.Nets[outer].Spelt, p.call.outer.Nodes[outer]
 	}
-	return grouped(list)
+	return n.Spelt, p.context.Nodes[net]
+}
+
+// operations lists what the card of a MOSFET, or of an instance that wraps one,
+// does: in every mode, in every distinct instance of the subckt around it.
+func operations(seen []sighting, e *parser.Element) []operation {
+	return grouped(byElement(seen)[e])
 }
 
 // spotted is a device where one run and instance sees it.
 type spotted struct {
 	sighting
 	device *bias.Device
+	call   *call
 }
 
-// byElement sorts every device of a body by its card, for questions about many.
+// byElement sorts every device of a body by its card.
 func byElement(seen []sighting) map[*parser.Element][]spotted {
 	out := map[*parser.Element][]spotted{}
 	for _, s := range seen {
 		for _, d := range s.context.Devices {
-			out[d.Device.Elem] = append(out[d.Device.Elem], spotted{s, d})
+			out[d.Device.Elem] = append(out[d.Device.Elem], spotted{s, d, nil})
+		}
+		for _, ch := range s.context.Children {
+			if w, ok := ch.Wrapped(); ok {
+				inner := sighting{s.run, s.path, w.Context}
+				out[ch.Instance.Elem] = append(out[ch.Instance.Elem], spotted{inner, w.Device, &call{s.context, ch}})
+			}
 		}
 	}
 	return out
@@ -58,7 +77,7 @@ func byElement(seen []sighting) map[*parser.Element][]spotted {
 func grouped(list []spotted) []operation {
 	var out []operation
 	for _, s := range list {
-		p := part{s.run.Corner, s.context, s.device}
+		p := part{s.run.Corner, s.context, s.device, s.call}
 		i := slices.IndexFunc(out, func(o operation) bool { return o.path == s.path && o.mode == s.run.Mode })
 		if i < 0 {
 			i = len(out)
