@@ -46,11 +46,7 @@ type Problem struct {
 
 // RulesFor gives what the settings say for one deck, by the rule's name.
 func (f *File) RulesFor(deck string) map[string]Rule {
-	below, err := filepath.Rel(filepath.Dir(f.Path), deck)
-	if err != nil {
-		below = deck
-	}
-	below = filepath.ToSlash(below)
+	below := filepath.ToSlash(relative(filepath.Dir(f.Path), deck))
 	got := map[string]Rule{}
 	for _, r := range f.Rules {
 		if r.Path != "" && !circuit.Match(r.Path, below) {
@@ -71,6 +67,24 @@ func (f *File) RulesFor(deck string) map[string]Rule {
 		got[r.Name] = was
 	}
 	return got
+}
+
+// relative is a path below a folder, of which one may be written from the root and
+// the other from the working folder.
+func relative(folder, path string) string {
+	if below, err := filepath.Rel(folder, path); err == nil {
+		return below
+	}
+	from, err1 := filepath.Abs(folder)
+	to, err2 := filepath.Abs(path)
+	if err1 != nil || err2 != nil {
+		return path
+	}
+	below, err := filepath.Rel(from, to)
+	if err != nil {
+		return path
+	}
+	return below
 }
 
 // UnknownRules lists the settings of rules that do not exist.

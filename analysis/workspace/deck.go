@@ -79,7 +79,7 @@ func (d *Deck) Findings(ctx context.Context, rules []*analysis.Rule) []analysis.
 	if design == nil {
 		return nil
 	}
-	return analysis.Run(ctx, rules, d.input(ctx, design.Docs))
+	return analysis.Limit(d.collect(ctx, rules, design.Docs))
 }
 
 func (d *Deck) input(ctx context.Context, docs []*circuit.Document) analysis.Input {

@@ -89,7 +89,7 @@ func (s *Snapshot) judge(ctx context.Context, root string, rules []*analysis.Rul
 			docs = append(docs, doc)
 		}
 	}
-	j.findings = analysis.Collect(ctx, rules, d.input(ctx, docs))
+	j.findings = d.collect(ctx, rules, docs)
 	j.evaluated, j.notEvaluated = coverage(d.Bias(ctx))
 	return j
 }

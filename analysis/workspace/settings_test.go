@@ -111,3 +111,23 @@ func TestSettingsFollowEdits(t *testing.T) {
 		t.Error("the nearer settings say nothing of X1, and it is still a transistor")
 	}
 }
+
+// Levels hold for the decks of their path; a rule that does not exist is said.
+func TestSettingsLevels(t *testing.T) {
+	for _, test := range []struct{ rules, want, not string }{
+		{"rating-exceeded = \"note\"", "note VDS of M1", "error VDS of M1"},
+		{"rating-exceeded = \"off\"", "", "VDS of M1"},
+		{"rating-exceed = \"off\"", `error there is no rule "rating-exceed"`, "note VDS"},
+		{"rating-exceeded = \"warning\"\n[[path]]\nmatch = \"other/*\"\nrules = { rating-exceeded = \"off\" }", "warning VDS of M1", "error"},
+	} {
+		s := workspace.New(settingsFiles(settingsText + test.rules + "\n"))
+		var got []string
+		for _, f := range s.Deck(filepath.FromSlash("chip/blocks/deck.sp")).Findings(context.Background(), rules.All) {
+			got = append(got, f.Severity.String()+" "+f.Message)
+		}
+		all := strings.Join(got, "\n")
+		if !strings.Contains(all, test.want) || strings.Contains(all, test.not) {
+			t.Errorf("%s: want %q and not %q in:\n%s", test.rules, test.want, test.not, all)
+		}
+	}
+}
