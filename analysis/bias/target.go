@@ -65,7 +65,7 @@ func (c *Context) index() {
 
 // candidates are the devices of a cell that may fit a pattern.
 func (c *Context) candidates(pattern string) []*Device {
-	if c.named == nil || strings.ContainsAny(pattern, "*?") {
+	if c.named == nil || isPattern(pattern) {
 		return c.Devices
 	}
 	return c.named[pattern]
