@@ -18,6 +18,7 @@ type builder struct {
 	calls  map[call]*Cell
 	models map[*Model]bool // those looked at for errors
 	sizes  map[sizeKey]sized
+	facts  map[string]*Fact // by the name of a model or subckt; see stated
 
 	// Devices, instances and node lists are cut from blocks: a deck has millions.
 	devices   []Device

@@ -79,7 +79,19 @@ func (b *builder) stated(e *ElementAt) *Fact {
 	if e.Model.IsZero() || kinds[e.Letter] != OtherKind {
 		return nil
 	}
-	names := factNames(e.Model)
+	name := e.Model.Text
+	fact, ok := b.facts[name]
+	if !ok {
+		if b.facts == nil {
+			b.facts = map[string]*Fact{}
+		}
+		fact = b.findStated(factNames(e.Model))
+		b.facts[name] = fact
+	}
+	return fact
+}
+
+func (b *builder) findStated(names []string) *Fact {
 	for s := b.cell.Scope; s != nil; s = s.Parent {
 		for _, n := range s.Notes {
 			if fit, ok := n.Note.(*parser.Fit); ok && n.Err == nil && Match(parser.Fold(fit.Model.Text), names[0]) {

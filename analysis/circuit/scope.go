@@ -189,16 +189,19 @@ func (s *Scope) factNames(model string) []string {
 	return names
 }
 
-// holdsOne says whether a subckt has one element that may be a transistor.
+// holdsOne says whether a subckt has one element that may be the transistor that
+// it stands for; instances beside a transistor are taken for its parasitics.
 func (s *Scope) holdsOne() bool {
-	n := 0
+	transistors, instances := 0, 0
 	for i := range s.Elements {
 		switch s.Elements[i].Letter {
-		case 'm', 'n', 'x':
-			n++
+		case 'm', 'n':
+			transistors++
+		case 'x':
+			instances++
 		}
 	}
-	return n == 1 && s.Subckt != nil
+	return s.Subckt != nil && (transistors == 1 || transistors == 0 && instances == 1)
 }
 
 func (s *Scope) gatherWords(into map[string]bool) {
