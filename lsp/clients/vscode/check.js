@@ -13,6 +13,7 @@ const path = require("node:path");
 const { pathToFileURL } = require("node:url");
 
 const server = process.env.SERVER || "triodeck";
+const decks = path.resolve(process.env.DECKS || path.join(__dirname, "../../../testdata/demo"));
 const manifest = require("./package.json");
 setTimeout(() => { console.error("vscode: nothing came for 30 s"); process.exit(1); }, 30000).unref();
 
@@ -46,7 +47,7 @@ async function extension() {
 
 async function protocol() {
   const { createProtocolConnection, StreamMessageReader, StreamMessageWriter } = require("vscode-languageserver-protocol/node");
-  const demo = path.resolve(__dirname, "../../../testdata/demo/first_draft.sp");
+  const demo = path.join(decks, "first_draft.sp");
   const uri = pathToFileURL(demo).toString();
   const child = spawn(server, ["lsp"], { stdio: ["pipe", "pipe", "inherit"] });
   const ended = new Promise((resolve) => child.on("exit", resolve));
