@@ -13,6 +13,9 @@ import (
 const foreignErrors = 20
 
 func foreign(f *parser.File) string {
+	if f.Foreign != "" {
+		return "this text is " + f.Foreign
+	}
 	if at := strings.IndexByte(f.Src, 0); at >= 0 {
 		return fmt.Sprintf("this is a binary file, not a deck: byte %d is zero", at+1)
 	}

@@ -20,6 +20,11 @@ var NotADeck = &analysis.Rule{
 
 func notADeck(p *analysis.Pass) {
 	at := circuit.Place{Doc: p.Doc, Span: source.Span{}}
+	if errs := p.Doc.File.Errors(); p.Doc.File.Foreign != "" && len(errs) > 0 {
+		at.Span = errs[0].Span
+		p.Report(analysis.Finding{Severity: analysis.Note, Place: at, Message: errs[0].Message})
+		return
+	}
 	if why := p.Foreign(p.Doc); why != "" {
 		p.Reportf(at, "%s", why)
 		return
