@@ -14,11 +14,10 @@ const shortChannel = 0.35e-6
 // noAccess is the note of a short device without any.
 const noAccess = "access resistance is not included"
 
-// access adds the contact and access resistance that a card leaves out: as an
-// annotation states it, the nearest scope first, else as the settings do. The
+// access adds the contact and access resistance that a card leaves out for a
+// device of some names: as an annotation states it, the nearest scope first, else as the settings do. The
 // note says what was done; a short device without any has one too.
-func (w *worker) access(cell *circuit.Cell, d *circuit.Device, g *mos.Geometry) (note string) {
-	names := cell.FactNames(d)
+func (w *worker) access(cell *circuit.Cell, names []string, g *mos.Geometry) (note string) {
 	if stated := w.accessNote(cell, names); stated != nil {
 		values := map[string]float64{}
 		for _, p := range stated.Params {
@@ -41,9 +40,11 @@ func (w *worker) access(cell *circuit.Cell, d *circuit.Device, g *mos.Geometry) 
 
 func (w *worker) accessNote(cell *circuit.Cell, names []string) *parser.Access {
 	for s := cell.Scope; s != nil; s = s.Parent {
-		for _, a := range w.statements(s).access {
-			if matchesAny(fold(a.Access.Model), names) {
-				return a.Access
+		for _, name := range names {
+			for _, a := range w.statements(s).access {
+				if Match(fold(a.Access.Model), name) {
+					return a.Access
+				}
 			}
 		}
 	}
@@ -61,13 +62,4 @@ func addAccess(g *mos.Geometry, values map[string]float64) {
 	if v, ok := values["rd"]; ok {
 		g.RD = v
 	}
-}
-
-func matchesAny(pattern string, names []string) bool {
-	for _, name := range names {
-		if Match(pattern, name) {
-			return true
-		}
-	}
-	return false
 }

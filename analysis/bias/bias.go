@@ -53,7 +53,8 @@ type Context struct {
 	Devices  []*Device // every MOSFET of the cell, in card order
 	Children []Child   // in card order
 
-	named map[string][]*Device // by folded name, in a cell of many devices
+	named  map[string][]*Device // by folded name, in a cell of many devices
+	within []string             // see frame
 }
 
 // Axis is a ranged node: its voltage at each sample.
@@ -144,7 +145,7 @@ type Check struct {
 	Sample  int    // the worst
 	At      string // the bias of the worst sample: "v(in)=1.60 V"; empty if nothing is ranged
 	Reason  string // NotJudged: why
-	Fails   int    // how many instances fail
+	Fails   int    // how many instances fail, in the run where most do
 }
 
 // Expect is the parsed expectation a check belongs to.

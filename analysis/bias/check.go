@@ -18,6 +18,7 @@ const equalWithin = 0.01
 type judge struct {
 	result *Result
 	a      *analyser
+	run    *Run // that is being judged
 	order  []checkKey
 	worst  map[checkKey]*verdict
 }
@@ -33,6 +34,8 @@ type checkKey struct {
 type verdict struct {
 	Check
 	score float64
+	run   *Run // the last that failed, and how many instances failed in it
+	inRun int
 }
 
 // Checks judges every expectation, each condition once, and gives the worst case
@@ -40,6 +43,7 @@ type verdict struct {
 func (r *Result) Checks() []Check {
 	j := &judge{result: r, a: &analyser{result: r, stmts: map[*circuit.Scope]*statements{}}, worst: map[checkKey]*verdict{}}
 	for _, run := range r.Runs {
+		j.run = run
 		counts := run.counts()
 		for path, c := range r.Contexts(run) {
 			for _, n := range j.a.statements(c.Cell.Scope).expects {
@@ -253,23 +257,27 @@ func show(v float64, unit string) string {
 }
 
 // record keeps the worst outcome of a condition: failed before not judged before
-// met, then the larger score.
+// met, then the larger score; and the most instances that fail in one run.
 func (j *judge) record(cond, count int, score float64, c Check) {
 	key := checkKey{c.Note.Annotation, cond}
 	was := j.worst[key]
 	if was == nil {
 		j.order = append(j.order, key)
-		was = &verdict{c, score}
+		was = &verdict{Check: c, score: score}
 		j.worst[key] = was
-		was.Fails = 0
 	} else if rank(c.Status) > rank(was.Status) || (c.Status == was.Status && score > was.score) {
 		fails := was.Fails
-		*was = verdict{c, score}
+		was.Check, was.score = c, score
 		was.Fails = fails
 	}
-	if c.Status == Failed {
-		was.Fails += count
+	if c.Status != Failed {
+		return
 	}
+	if was.run != j.run {
+		was.run, was.inRun = j.run, 0
+	}
+	was.inRun += count
+	was.Fails = max(was.Fails, was.inRun)
 }
 
 func rank(s Status) int { return map[Status]int{Met: 0, NotJudged: 1, Failed: 2}[s] }

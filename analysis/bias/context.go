@@ -32,6 +32,7 @@ type frame struct {
 	over    []override         // annotations of an outer level on nodes in here
 	m       float64            // product of the instances' multipliers
 	path    string             // of the first instance, for axis names
+	within  []string           // folded names of the subckts that wrap the cell's MOSFET, outermost first
 }
 
 // override is an outer annotation on an inner node: path is relative to the
@@ -68,7 +69,7 @@ func (w *worker) context(cell *circuit.Cell, f frame) *Context {
 		return c
 	}
 	v := w.voltages(cell, f)
-	c := &Context{Cell: cell, Samples: v.samples, Axes: v.axes, Nodes: v.nodes}
+	c := &Context{Cell: cell, Samples: v.samples, Axes: v.axes, Nodes: v.nodes, within: f.within}
 	w.memo[key] = c
 	for _, d := range cell.Devices {
 		if d.Kind == circuit.MOSFET {
@@ -100,6 +101,9 @@ func (w *worker) child(c *Context, inst *circuit.Instance, v *voltages, f frame,
 		samples: c.Samples, axes: c.Axes, globals: globals,
 		m: f.m * multiplier(inst), path: f.path + inst.Spelt + ".",
 		ports: make([]Voltage, len(inst.Cell.Ports)),
+	}
+	if inst.Cell.Wrapper() != nil {
+		inner.within = append(slices.Clip(f.within), inst.Cell.Scope.Name)
 	}
 	for i := range inner.ports {
 		if i < len(inst.Nets) {
@@ -149,7 +153,7 @@ func (f frame) compressed() frame {
 		}
 		return v
 	}
-	out := frame{samples: 1, m: f.m, path: f.path}
+	out := frame{samples: 1, m: f.m, path: f.path, within: f.within}
 	for _, p := range f.ports {
 		out.ports = append(out.ports, one(p))
 	}
@@ -201,6 +205,9 @@ func (f frame) key() string {
 	for _, o := range f.over {
 		b = append(append(b, o.path...), '=')
 		volt(o.v)
+	}
+	for _, name := range f.within {
+		b = append(append(b, '/'), name...)
 	}
 	return string(b)
 }

@@ -2,6 +2,8 @@ package bias
 
 import (
 	"fmt"
+	"slices"
+	"strings"
 
 	"triodeck/analysis/circuit"
 	"triodeck/analysis/mos"
@@ -21,11 +23,12 @@ type compiled struct {
 type compileKey struct {
 	device *circuit.Device
 	m      float64
+	within string
 }
 
 // device evaluates a MOSFET at the voltages of its context.
 func (w *worker) device(cell *circuit.Cell, d *circuit.Device, c *Context, m float64) *Device {
-	cc := w.compile(cell, d, m)
+	cc := w.compile(cell, d, m, c.within)
 	out := &Device{
 		Device: d, Polarity: cc.polarity, Model: d.Elem.Model.Text, ModelKind: cc.kind,
 		Geometry: cc.geometry, Reason: cc.reason, Notes: cc.notes, Source: Annotated,
@@ -74,8 +77,8 @@ func appendNew(list []string, s string) []string {
 }
 
 // compile makes a device ready once a run and multiplier.
-func (w *worker) compile(cell *circuit.Cell, d *circuit.Device, m float64) *compiled {
-	key := compileKey{d, m}
+func (w *worker) compile(cell *circuit.Cell, d *circuit.Device, m float64, within []string) *compiled {
+	key := compileKey{d, m, strings.Join(within, "/")}
 	if c, ok := w.compiled[key]; ok {
 		return c
 	}
@@ -90,7 +93,8 @@ func (w *worker) compile(cell *circuit.Cell, d *circuit.Device, m float64) *comp
 	if reason == "" {
 		reason = badTemp
 	}
-	access := w.access(cell, d, &c.geometry)
+	names := append(slices.Clip(within), cell.FactNames(d)...) // what the writer sees first
+	access := w.access(cell, names, &c.geometry)
 	if card, ok := w.card(cell, d, c); ok {
 		c.polarity = card.Polarity
 		if c.reason = reason; reason == "" {
@@ -99,7 +103,7 @@ func (w *worker) compile(cell *circuit.Cell, d *circuit.Device, m float64) *comp
 	}
 	// What cannot be read, has no bin or is not modelled may have a stand-in.
 	if c.model == nil && reason == "" || d.Model != nil && d.Model.Def == nil {
-		if card, note, ok := w.standIn(cell, d); ok {
+		if card, note, ok := w.standIn(cell, names); ok {
 			c.polarity, c.reason = card.Polarity, ""
 			c.notes = append(c.notes, note)
 			c.use(card, temp)

@@ -9,13 +9,14 @@ import (
 
 // standIn gives the card of a stand-in for a model that cannot be used: the
 // nearest annotation's, else the settings'. The note says where it comes from.
-func (w *worker) standIn(cell *circuit.Cell, d *circuit.Device) (card mos.Card, note string, ok bool) {
+func (w *worker) standIn(cell *circuit.Cell, names []string) (card mos.Card, note string, ok bool) {
 	const says = "a stand-in: the numbers come from the fit, not from a model card"
-	names := cell.FactNames(d)
 	for s := cell.Scope; s != nil; s = s.Parent {
-		for i, f := range w.statements(s).fits {
-			if matchesAny(fold(f.Fit.Model), names) {
-				return w.tweaked(fitCard(cell, &w.statements(s).fits[i])), says, true
+		for _, name := range names {
+			for i, f := range w.statements(s).fits {
+				if Match(fold(f.Fit.Model), name) {
+					return w.tweaked(fitCard(cell, &w.statements(s).fits[i])), says, true
+				}
 			}
 		}
 	}
