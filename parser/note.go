@@ -2,6 +2,7 @@ package parser
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 
 	"triodeck/parser/source"
@@ -79,6 +80,11 @@ func (r *reader) addNote(sp source.Span, trailing bool) *Annotation {
 	mark := text[sp.Start:at]
 	if at < int(sp.End) && !blank(text[at]) && !lineBreak(text[at]) {
 		end := wordEnd(text[:sp.End], at)
+		if !slices.Contains(statements, Fold(text[at:end])) {
+			// A comment that happens to begin so, like many a banner, says nothing to us.
+			r.card.Notes = r.card.Notes[:len(r.card.Notes)-1]
+			return n
+		}
 		n.Err = &Error{Span: source.Span{Start: sp.Start, End: int32(end)}, Message: fmt.Sprintf("a blank is missing behind %q", mark)}
 		return n
 	}

@@ -18,6 +18,9 @@ func (n *noteReader) unit(e Expr, want string) *Error {
 		return nil
 	}
 	num, _ := ParseNumber(lit.Text)
+	if foldEqual(num.Suffix, "a") && num.Unit == "" {
+		return &Error{Span: lit.Span(), Message: quoted(lit.Text) + ` is in atto, 1e-18, and hardly meant so: amperes are written "A" behind another suffix or not at all`}
+	}
 	if num.Unit == "" {
 		return nil
 	}

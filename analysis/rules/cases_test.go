@@ -78,6 +78,9 @@ func runCase(t *testing.T, path string, a *txtar.Archive, rule string) (speaks, 
 	for _, f := range found {
 		if f.Rule == rule {
 			said[f.Place.Doc.Path] = true
+			if filepath.Base(f.Place.Doc.Path) == "triodeck.toml" {
+				said[filepath.Join(filepath.Dir(f.Place.Doc.Path), "speaks.sp")] = true
+			}
 		}
 	}
 	for _, deck := range decks {
