@@ -1,6 +1,7 @@
 package circuit
 
 import (
+	"slices"
 	"strings"
 
 	"triodeck/parser"
@@ -179,7 +180,11 @@ func (b *builder) resolve(e *ElementAt) (*Model, *Scope) {
 	if m := env.model(name); m != nil {
 		return m, nil
 	}
-	return nil, env.subckt(name)
+	def := env.subckt(name)
+	if slices.Contains(b.open, def) {
+		return nil, nil // a resistor in the subckt of its own name: the model is elsewhere
+	}
+	return nil, def
 }
 
 func (b *builder) instance(e *ElementAt, def *Scope) {
