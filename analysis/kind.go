@@ -35,13 +35,7 @@ func foreign(f *parser.File) string {
 	return ""
 }
 
-// analyses are the directives that ask a simulator for results. A file that has
-// one is meant to run.
-var analyses = map[string]bool{
-	".op": true, ".dc": true, ".ac": true, ".tran": true, ".noise": true, ".tf": true,
-	".sens": true, ".four": true, ".disto": true, ".pz": true, ".hb": true, ".pss": true,
-}
-
+// whole says that the root file is a deck of its own: it drives, analyses or ends.
 func whole(d *circuit.Design) bool {
 	if d.Top == nil || len(d.Top.Elements) == 0 {
 		return false
@@ -56,7 +50,7 @@ func whole(d *circuit.Design) bool {
 		case *parser.End:
 			return true
 		case *parser.Other:
-			if analyses[parser.Fold(s.Name.Text)] {
+			if circuit.IsAnalysis(s.Name.Text) {
 				return true
 			}
 		}

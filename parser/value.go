@@ -33,7 +33,7 @@ func bareValue(w Word) Value {
 			return v
 		}
 	}
-	if strings.IndexAny(w.Text, "+-*/^%<>&|?!~") >= 0 && readsAsExpr(w) {
+	if strings.ContainsAny(w.Text, "+-*/^%<>&|?!~") && readsAsExpr(w) {
 		v.Form = ExprValue
 	}
 	return v

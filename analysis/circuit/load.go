@@ -4,6 +4,7 @@ import (
 	"context"
 	"path/filepath"
 	"slices"
+	"strings"
 
 	"triodeck/parser"
 	"triodeck/parser/source"
@@ -37,7 +38,8 @@ type reading struct {
 	cards     int
 	reads     int
 	scale     float64
-	full      bool // a cap was met
+	bare      float64 // metres that a bare 1 stands for, 0 if no comment says
+	full      bool    // a cap was met
 }
 
 // walk is a file, or a section of one, being read.
@@ -152,7 +154,7 @@ func (r *reading) card(w *walk, i int) {
 		}
 		return
 	}
-	if c.Kind == parser.TitleCard && w.doc == r.design.Root && len(r.stack) == 1 {
+	if c.Kind == parser.TitleCard && w.doc == r.design.Root && len(r.stack) == 1 && !fragment(w.doc.File) {
 		return // the title of a deck is text, whatever it looks like
 	}
 	if cond, ok := c.Stmt.(*parser.Cond); ok {
@@ -218,7 +220,11 @@ func (r *reading) statement(w *walk, i int, c *parser.Card) {
 }
 
 func (r *reading) other(w *walk, st *parser.Other) {
-	switch parser.Fold(st.Name.Text) {
+	switch strings.TrimPrefix(parser.Fold(st.Name.Text), "*") {
+	case ".scale": // a layout tool's comment; of several the last counts
+		if len(st.Fields) > 0 {
+			r.bare = bareUnits[parser.Fold(st.Fields[0].Text)]
+		}
 	case ".alter": // what follows changes the deck for a second run
 		w.ended = true
 	case ".protect", ".prot":
@@ -227,6 +233,9 @@ func (r *reading) other(w *walk, st *parser.Other) {
 		w.sealed = false
 	}
 }
+
+// bareUnits are the words of `*.SCALE`, in metres.
+var bareUnits = map[string]float64{"micron": 1e-6, "microns": 1e-6, "um": 1e-6, "meter": 1, "meters": 1, "metre": 1, "m": 1}
 
 // seal notes an encrypted block, once: names that are found nowhere may be defined
 // in it.

@@ -134,6 +134,13 @@ func (b *builder) unit(s *Size, facts Facts, names []string, m *Model) {
 		}
 		return
 	}
+	if b.bare != 0 {
+		if b.bare != 1 {
+			s.Unit = b.bare
+			s.Notes = append(s.Notes, "bare geometry is in micrometres: the deck's `*.SCALE` says so")
+		}
+		return
+	}
 	const micro = 1e-6
 	env := b.cell.Env
 	if m != nil && len(m.Bins) > 0 && !env.fits(m, s.L, s.W/s.NF) && (env.fits(m, s.L*micro, s.W*micro/s.NF) || env.fits(m, s.L*micro, s.W*micro)) {

@@ -137,7 +137,7 @@ func wrongRail(m part, bulk float64) *junction {
 	sign := float64(m.Polarity)
 	spread := 0.0
 	for _, n := range m.Context.Nodes {
-		if n.V == nil || len(n.V) == 0 {
+		if len(n.V) == 0 {
 			continue
 		}
 		f := sign * (bulk - n.V[0])

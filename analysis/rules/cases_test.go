@@ -12,6 +12,7 @@ import (
 	"github.com/google/go-cmp/cmp"
 	"golang.org/x/tools/txtar"
 
+	"triodeck/analysis"
 	"triodeck/analysis/report"
 	"triodeck/analysis/rules"
 	"triodeck/analysis/workspace"
@@ -48,10 +49,37 @@ func TestCases(t *testing.T) {
 	}
 }
 
-func runCase(t *testing.T, path string, a *txtar.Archive, rule string) (speaks, quiet int) {
+// TestMoreCases compares the cases that belong to no one rule: allowances, kinds
+// of file, limits.
+func TestMoreCases(t *testing.T) {
+	files, err := filepath.Glob(filepath.Join(casesDir, "*", "*.txtar"))
+	if err != nil {
+		t.Fatal(err)
+	}
+	ran := 0
+	for _, path := range files {
+		if rules.ByName(filepath.Base(filepath.Dir(path))) != nil {
+			continue
+		}
+		ran++
+		t.Run(filepath.Base(filepath.Dir(path))+"/"+filepath.Base(path), func(t *testing.T) {
+			a, err := txtar.ParseFile(path)
+			if err != nil {
+				t.Fatal(err)
+			}
+			dir, decks := unpack(t, a, func(name string) bool { return strings.HasSuffix(name, ".sp") })
+			compareWant(t, path, a, printed(t, dir, lint(t, decks)))
+		})
+	}
+	if ran == 0 {
+		t.Error("no case")
+	}
+}
+
+// unpack writes the files of a case and lists those that are decks.
+func unpack(t *testing.T, a *txtar.Archive, isDeck func(name string) bool) (dir string, decks []string) {
 	t.Helper()
-	dir := t.TempDir()
-	var decks []string
+	dir = t.TempDir()
 	for _, f := range a.Files {
 		if f.Name == "want" {
 			continue
@@ -63,17 +91,41 @@ func runCase(t *testing.T, path string, a *txtar.Archive, rule string) (speaks, 
 		if err := os.WriteFile(full, f.Data, 0o644); err != nil {
 			t.Fatal(err)
 		}
-		if base := filepath.Base(f.Name); strings.HasPrefix(base, "speaks") || strings.HasPrefix(base, "quiet") {
+		if isDeck(filepath.Base(f.Name)) {
 			decks = append(decks, full)
 		}
 	}
 	if len(decks) == 0 {
-		t.Errorf("%s has no deck", path)
+		t.Error("the case has no deck")
 	}
+	return dir, decks
+}
+
+func lint(t *testing.T, decks []string) []analysis.Finding {
+	t.Helper()
 	found, _, err := workspace.New(workspace.OS()).Lint(context.Background(), decks, rules.All, nil)
 	if err != nil {
 		t.Fatal(err)
 	}
+	return found
+}
+
+// printed is what lint shows in a terminal, without colours.
+func printed(t *testing.T, dir string, found []analysis.Finding) []byte {
+	t.Helper()
+	var b bytes.Buffer
+	shown := report.Relative(dir)
+	opt := report.TextOptions{Path: func(p string) string { return filepath.ToSlash(shown(p)) }, Source: true}
+	if err := report.Text(&b, found, opt); err != nil {
+		t.Fatal(err)
+	}
+	return b.Bytes()
+}
+
+func runCase(t *testing.T, path string, a *txtar.Archive, rule string) (speaks, quiet int) {
+	t.Helper()
+	dir, decks := unpack(t, a, func(name string) bool { return strings.HasPrefix(name, "speaks") || strings.HasPrefix(name, "quiet") })
+	found := lint(t, decks)
 	said := map[string]bool{}
 	for _, f := range found {
 		if f.Rule == rule {
@@ -96,12 +148,7 @@ func runCase(t *testing.T, path string, a *txtar.Archive, rule string) (speaks, 
 			quiet++
 		}
 	}
-	var b bytes.Buffer
-	shown := report.Relative(dir)
-	if err := report.Text(&b, found, report.TextOptions{Path: func(p string) string { return filepath.ToSlash(shown(p)) }, Source: true}); err != nil {
-		t.Fatal(err)
-	}
-	compareWant(t, path, a, b.Bytes())
+	compareWant(t, path, a, printed(t, dir, found))
 	return speaks, quiet
 }
 

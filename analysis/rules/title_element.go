@@ -18,7 +18,7 @@ var TitleElement = &analysis.Rule{
 
 func titleElement(p *analysis.Pass) {
 	root := p.Design.Root
-	if root.File.Len() == 0 || root.File.Card(0).Kind != parser.TitleCard {
+	if !p.Whole() || root.File.Len() == 0 || root.File.Card(0).Kind != parser.TitleCard {
 		return
 	}
 	at := circuit.Place{Doc: root}

@@ -1,3 +1,0 @@
-package parser
-
-func (f *File) judge() {}
