@@ -17,6 +17,7 @@ type Facts struct {
 	scopes func() []*circuit.Scope
 	whole  func() bool
 	closed func() bool
+	supply func() bool
 
 	mu      sync.Mutex
 	foreign map[*parser.File]string
@@ -24,7 +25,7 @@ type Facts struct {
 
 // NewFacts prepares the facts of a deck; both arguments may be nil.
 func NewFacts(d *circuit.Design, b *bias.Result) *Facts {
-	return &Facts{
+	f := &Facts{
 		Design:  d,
 		Bias:    b,
 		foreign: map[*parser.File]string{},
@@ -33,6 +34,8 @@ func NewFacts(d *circuit.Design, b *bias.Result) *Facts {
 		whole:   sync.OnceValue(func() bool { return d != nil && whole(d) }),
 		closed:  sync.OnceValue(func() bool { return d != nil && closed(d) }),
 	}
+	f.supply = sync.OnceValue(func() bool { return supplied(f.Scopes(), f.Cells()) })
+	return f
 }
 
 // Cells lists every elaborated cell once: the top level first, then in order of
@@ -49,6 +52,11 @@ func (f *Facts) Whole() bool { return f.whole() }
 // Closed says that every file and section that the deck asks for was found, so
 // that a name which is not defined is defined nowhere.
 func (f *Facts) Closed() bool { return f.closed() }
+
+// Supplied says that the deck brings the models that its devices need, or needs
+// none. One that brings none is completed by whoever simulates it: what else it
+// leaves undefined may come from there too.
+func (f *Facts) Supplied() bool { return f.supply() }
 
 func cellsOf(d *circuit.Design) []*circuit.Cell {
 	if d == nil {

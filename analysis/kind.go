@@ -67,3 +67,37 @@ func closed(d *circuit.Design) bool {
 	}
 	return d.Top == nil || !d.Top.Open
 }
+
+// supplied: without a single model, devices that name one and instances that are
+// sized like a device are left to somebody else.
+func supplied(scopes []*circuit.Scope, cells []*circuit.Cell) bool {
+	for _, s := range scopes {
+		if len(s.Models) > 0 {
+			return true
+		}
+	}
+	for _, c := range cells {
+		for _, d := range c.Devices {
+			if d.Kind == circuit.MOSFET && d.Model == nil {
+				return false
+			}
+		}
+		for _, x := range c.Instances {
+			if x.Def == nil && sized(x.Elem) {
+				return false
+			}
+		}
+	}
+	return true
+}
+
+// sized says whether a card gives a length, width or number of fins.
+func sized(e *parser.Element) bool {
+	for _, q := range e.Params {
+		switch parser.Fold(q.Name.Text) {
+		case "l", "w", "nfin", "lr", "wr":
+			return true
+		}
+	}
+	return false
+}

@@ -19,10 +19,12 @@ var marks = []struct {
 	{regexp.MustCompile(`(?m)^[^*;$\n]*\{\{.*?\}\}`), "a template"},
 	{regexp.MustCompile(`(?m)^[ \t]*#[ \t]*(?:ifdef|ifndef|endif|define|include)\b`), "a preprocessor's source"},
 	{regexp.MustCompile(`(?m)^[ \t]*(?:inline[ \t]+)?subckt[ \t]+[^=\n]*$`), otherNetlist},
-	{regexp.MustCompile(`(?m)^[ \t]*simulator[ \t]+lang[ \t]*=[ \t]*[a-rt-z]`), otherNetlist},
 	{regexp.MustCompile(`(?m)^[ \t]*(?:simulatorOptions|modelParameter|designParamVals|ahdl_include)\b`), otherNetlist},
 	{regexp.MustCompile(`(?m)^[ \t]*[A-Za-z]\w*[ \t]+\([^()\n]*\)[ \t]+[A-Za-z_]\w*[ \t]*(?:\w+=|\\?\r?$)`), otherNetlist},
 }
+
+// declared is a file's own word that it is in another language.
+var declared = regexp.MustCompile(`(?m)^[ \t]*simulator[ \t]+lang[ \t]*=[ \t]*(?:[a-rt-z]|s[a-oq-z]|sp[a-hj-z])`)
 
 const otherNetlist = "a netlist in another language"
 
@@ -54,7 +56,14 @@ func (f *File) judge() {
 			dotted++
 		}
 	}
-	if bad == 0 || dotted > bad {
+	if bad == 0 {
+		return
+	}
+	if at := declared.FindStringIndex(f.Src); at != nil {
+		f.Foreign, f.foreign = otherNetlist, firstLine(f.Src, at[0])
+		return
+	}
+	if dotted > bad {
 		return
 	}
 	for _, m := range marks {

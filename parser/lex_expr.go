@@ -13,12 +13,29 @@ type exprLexer struct {
 
 // lexExpr cuts text[start:end] into out's tokens; base is where text begins in its card.
 func lexExpr(text string, start, end int, base int32, out *lexed) {
+	start, end = unquoted(text, start, end)
 	x := exprLexer{lexed: *out, at: start, end: end}
 	x.text, x.base = text, base
 	x.tokens = x.tokens[:0]
 	for x.step() {
 	}
 	*out = x.lexed
+}
+
+// unquoted leaves out double quotes around the whole of an expression, as some
+// libraries write them inside braces: {"-tol/2"}.
+func unquoted(text string, start, end int) (int, int) {
+	s, e := start, end
+	for s < e && blank(text[s]) {
+		s++
+	}
+	for e > s && blank(text[e-1]) {
+		e--
+	}
+	if e-s < 2 || text[s] != '"' || text[e-1] != '"' || strings.Contains(text[s+1:e-1], `"`) {
+		return start, end
+	}
+	return s + 1, e - 1
 }
 
 func (x *exprLexer) add(k tokenKind, start int) {

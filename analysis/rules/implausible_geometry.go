@@ -100,7 +100,8 @@ func oddGeometry(p *analysis.Pass, d *circuit.Device) (list []analysis.Finding, 
 		default:
 			continue
 		}
-		if ok {
+		// In a part, a name stands for what the deck around it will pass.
+		if ok && (p.Whole() || written.Value.Form == parser.NumberValue) {
 			list = append(list, oddity(p, d, written, q.v.V, why, plain))
 		}
 	}

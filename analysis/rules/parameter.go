@@ -22,8 +22,8 @@ func parameter(p *analysis.Pass) {
 		switch cause.Kind {
 		case circuit.ParamCycle:
 		case circuit.ParamUndefined:
-			// Whoever includes a part may define it, and so may a missing file.
-			if !p.Whole() || !p.Closed() {
+			// Whoever includes a part or brings the models may define it, and so may a missing file.
+			if !p.Whole() || !p.Closed() || !p.Supplied() {
 				continue
 			}
 		case circuit.ParamInvalid:

@@ -57,7 +57,11 @@ func (m *missings) report(p *analysis.Pass, what string, known []string) {
 	if len(m.list) == 0 || !p.Whole() || !p.Closed() {
 		return
 	}
-	if len(known) == 0 {
+	if len(known) == 0 || !p.Supplied() {
+		lacks, kind := what, ""
+		if len(known) > 0 {
+			lacks, kind = "model", what+" "
+		}
 		var names []string
 		seen := map[string]bool{}
 		for _, u := range m.list {
@@ -68,7 +72,7 @@ func (m *missings) report(p *analysis.Pass, what string, known []string) {
 		}
 		p.Report(analysis.Finding{
 			Severity: analysis.Note, Place: m.list[0].uses[0],
-			Message: fmt.Sprintf("this deck defines no %s: %s must come from elsewhere", what, listed(quoted(names), 5)),
+			Message: fmt.Sprintf("this deck defines no %s: %s%s must come from elsewhere", lacks, kind, listed(quoted(names), 5)),
 		})
 		return
 	}
