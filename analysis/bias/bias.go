@@ -96,6 +96,7 @@ type Device struct {
 type Row struct {
 	Path    string // x1.xsw.m3, as spelt; that of the instance where a subckt stands for one MOSFET
 	Wrapper string // folded name of that subckt, else ""
+	Shell   string // the same as spelt
 	Context *Context
 	*Device
 }

@@ -23,7 +23,7 @@ func (ch Child) Wrapped() (row Row, ok bool) {
 	}
 	for _, d := range c.Devices {
 		if d.Device == w.Device {
-			return Row{Path: ch.Instance.Spelt, Wrapper: ch.Context.Cell.Scope.Name, Context: c, Device: d}, true
+			return Row{Path: ch.Instance.Spelt, Wrapper: ch.Context.Cell.Scope.Name, Shell: ch.Context.Cell.Scope.Subckt.Name.Text, Context: c, Device: d}, true
 		}
 	}
 	return Row{}, false

@@ -20,7 +20,10 @@ var PinCount = &analysis.Rule{
 func pinCount(p *analysis.Pass) {
 	for _, c := range p.Cells() {
 		for _, x := range c.Instances {
-			if x.Def == nil || len(x.Elem.Nodes) == len(x.Def.Ports) {
+			if x.Def == nil {
+				continue
+			}
+			if n, most := len(x.Elem.Nodes), len(x.Def.Ports); n <= most && n >= most-x.Def.Optional {
 				continue
 			}
 			p.Report(analysis.Finding{

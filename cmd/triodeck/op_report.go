@@ -118,7 +118,7 @@ func newOpDevice(run *bias.Run, row bias.Row) opDevice {
 		Rds: of("rds"), Ic: of("ic"), Source: row.Source.String(), Notes: []string{},
 	}
 	if row.Wrapper != "" {
-		d.Model = row.Wrapper
+		d.Model = row.Shell
 	}
 	if region := regionText(row.Device); region != "" {
 		d.Region = &region
