@@ -3,7 +3,6 @@ package analysis
 import (
 	"strings"
 
-	"triodeck/analysis/bias"
 	"triodeck/analysis/circuit"
 	"triodeck/parser"
 	"triodeck/parser/source"
@@ -81,11 +80,11 @@ func (a *Allowance) covers(f *Finding) bool {
 	}
 	target := targetName(a.On.Text)
 	path := parser.Fold(f.Subject.Path)
-	if a.root && path != "" && bias.Match(target, path) {
+	if a.root && path != "" && circuit.Match(target, path) {
 		return true
 	}
 	if a.holds(f.Place) {
-		if path != "" && bias.Match(target, path[strings.LastIndexByte(path, '.')+1:]) {
+		if path != "" && circuit.Match(target, path[strings.LastIndexByte(path, '.')+1:]) {
 			return true
 		}
 		return a.names(f.Place, target)
@@ -99,7 +98,7 @@ func (a *Allowance) names(at circuit.Place, target string) bool {
 		return false
 	}
 	e, ok := at.Doc.File.Card(at.Card).Stmt.(*parser.Element)
-	return ok && bias.Match(target, parser.Fold(e.Name.Text))
+	return ok && circuit.Match(target, parser.Fold(e.Name.Text))
 }
 
 func (a *Allowance) sameCard(at circuit.Place) bool {

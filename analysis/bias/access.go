@@ -42,7 +42,7 @@ func (w *worker) accessNote(cell *circuit.Cell, names []string) *parser.Access {
 	for s := cell.Scope; s != nil; s = s.Parent {
 		for _, name := range names {
 			for _, a := range w.statements(s).access {
-				if Match(fold(a.Access.Model), name) {
+				if circuit.Match(fold(a.Access.Model), name) {
 					return a.Access
 				}
 			}

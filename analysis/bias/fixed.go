@@ -5,8 +5,8 @@ import (
 	"math"
 
 	"triodeck/analysis/circuit"
-	"triodeck/analysis/mos"
 	"triodeck/analysis/quantity"
+	"triodeck/parser/spelling"
 )
 
 // follow carries known voltages across voltage sources to nodes that are not
@@ -131,7 +131,7 @@ func (a *analyser) noSuchNode(cell *circuit.Cell, name string) string {
 	for _, n := range cell.Nets[1:] {
 		names = append(names, n.Spelt)
 	}
-	if near := mos.Nearest(name, names); near != "" {
+	if near := spelling.Nearest(name, names); near != "" {
 		msg += fmt.Sprintf(": did you mean %q?", near)
 	}
 	return msg

@@ -14,7 +14,7 @@ func (w *worker) standIn(cell *circuit.Cell, names []string) (card mos.Card, not
 	for s := cell.Scope; s != nil; s = s.Parent {
 		for _, name := range names {
 			for i, f := range w.statements(s).fits {
-				if Match(fold(f.Fit.Model), name) {
+				if circuit.Match(fold(f.Fit.Model), name) {
 					return w.tweaked(fitCard(cell, &w.statements(s).fits[i])), says, true
 				}
 			}

@@ -74,7 +74,7 @@ func (c *Context) candidates(pattern string) []*Device {
 func (c *Context) find(prefix, pattern string) []target {
 	var out []target
 	for _, d := range c.candidates(pattern) {
-		if Match(pattern, d.Device.Name) {
+		if circuit.Match(pattern, d.Device.Name) {
 			out = append(out, target{prefix + d.Device.Spelt, c, d})
 		}
 	}
@@ -83,7 +83,7 @@ func (c *Context) find(prefix, pattern string) []target {
 			continue
 		}
 		inner := prefix + ch.Instance.Spelt + "."
-		if w, ok := ch.Wrapped(); ok && Match(pattern, ch.Instance.Name) {
+		if w, ok := ch.Wrapped(); ok && circuit.Match(pattern, ch.Instance.Name) {
 			out = append(out, target{prefix + ch.Instance.Spelt, w.Context, w.Device})
 			continue
 		}
@@ -91,7 +91,7 @@ func (c *Context) find(prefix, pattern string) []target {
 			// An instance around one MOSFET is that MOSFET to its writer.
 			out = append(out, target{inner + ch.Context.Devices[0].Device.Spelt, ch.Context, ch.Context.Devices[0]})
 		}
-		if head, rest, ok := strings.Cut(pattern, "."); ok && Match(head, ch.Instance.Name) {
+		if head, rest, ok := strings.Cut(pattern, "."); ok && circuit.Match(head, ch.Instance.Name) {
 			out = append(out, ch.Context.find(inner, rest)...)
 		}
 	}

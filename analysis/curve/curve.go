@@ -10,6 +10,7 @@ import (
 	"strings"
 
 	"triodeck/analysis/bias"
+	"triodeck/analysis/circuit"
 )
 
 // maxSeries is how many devices one picture can hold and be read.
@@ -95,7 +96,7 @@ func rowsOf(r *bias.Result, run *bias.Run, name string) ([]bias.Row, error) {
 	for row := range r.Rows(run) {
 		all++
 		path := strings.ToLower(row.Path)
-		if bias.Match(pattern, path) || strings.HasPrefix(path, pattern+".") {
+		if circuit.Match(pattern, path) || strings.HasPrefix(path, pattern+".") {
 			out = append(out, row)
 		}
 	}

@@ -32,17 +32,6 @@ func TestUnknownParameter(t *testing.T) {
 	}
 }
 
-func TestNearest(t *testing.T) {
-	known := []string{"vth0", "voff", "vsat", "nfactor"}
-	for name, want := range map[string]string{
-		"vtho": "vth0", "vht0": "vth0", "nfacotr": "nfactor", "vsta": "vsat", "xyz": "", "lambda": "",
-	} {
-		if got := Nearest(name, known); got != want {
-			t.Errorf("%s: %q, want %q", name, got, want)
-		}
-	}
-}
-
 func TestGeometryIsChecked(t *testing.T) {
 	for _, g := range []Geometry{sized(0, 1e-6), sized(1e-6, -1e-6), {W: 1e-6, L: 1e-6, M: -1}} {
 		if d, notes := Compile(square(nil), g, 27); d != nil || !strings.Contains(notes[0].Text, "must be above zero") {

@@ -4,6 +4,7 @@ import (
 	"slices"
 	"strings"
 	"sync"
+	"triodeck/parser/spelling"
 )
 
 // families lists every model there is. To add one, write its file and put a
@@ -63,7 +64,7 @@ func unknown(card map[string]float64, f *family) []Note {
 	var notes []Note
 	for _, name := range odd {
 		text := "\"" + name + "\" is not a parameter of " + f.label
-		if near := Nearest(name, known.list); near != "" {
+		if near := spelling.Nearest(name, known.list); near != "" {
 			text += ": did you mean \"" + near + "\"?"
 		}
 		notes = append(notes, Note{Param: name, Text: text})

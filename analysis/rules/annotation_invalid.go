@@ -7,8 +7,8 @@ import (
 	"triodeck/analysis"
 	"triodeck/analysis/bias"
 	"triodeck/analysis/circuit"
-	"triodeck/analysis/mos"
 	"triodeck/parser"
+	"triodeck/parser/spelling"
 )
 
 //go:embed annotation-invalid.md
@@ -62,7 +62,7 @@ func allowed(p *analysis.Pass, at circuit.Place, a *parser.Allow) {
 		known = append(known, r.Name)
 	}
 	message := fmt.Sprintf("there is no rule %q", a.Rule.Text)
-	if near := mos.Nearest(name, known); near != "" {
+	if near := spelling.Nearest(name, known); near != "" {
 		message += fmt.Sprintf(": did you mean %q?", near)
 	}
 	p.Reportf(analysis.WordAt(at, a.Rule), "%s", message)

@@ -6,7 +6,6 @@ import (
 	"slices"
 
 	"triodeck/analysis"
-	"triodeck/analysis/bias"
 	"triodeck/analysis/circuit"
 	"triodeck/parser"
 )
@@ -31,7 +30,7 @@ func modelUndefined(p *analysis.Pass) {
 	names := map[string]bool{}
 	for _, s := range p.Scopes() {
 		for name := range s.Models {
-			names[baseName(name)] = true
+			names[circuit.BaseName(name)] = true
 		}
 	}
 	m.report(p, "model", slices.Sorted(maps.Keys(names)))
@@ -56,7 +55,7 @@ func known(design *circuit.Design, c *circuit.Cell, d *circuit.Device) bool {
 func fitted(s *circuit.Scope, model string) bool {
 	for ; s != nil; s = s.Parent {
 		for _, n := range s.Notes {
-			if fit, ok := n.Note.(*parser.Fit); ok && bias.Match(parser.Fold(fit.Model.Text), parser.Fold(model)) {
+			if fit, ok := n.Note.(*parser.Fit); ok && circuit.Match(parser.Fold(fit.Model.Text), parser.Fold(model)) {
 				return true
 			}
 		}

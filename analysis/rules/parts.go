@@ -41,11 +41,7 @@ func parts(r *bias.Result) iter.Seq[part] {
 		for _, run := range r.Runs {
 			w := &partWalk{run: run, yield: yield, seen: map[*bias.Context]bool{}}
 			for _, root := range run.Roots {
-				prefix := ""
-				if root.Alone && root.Cell.Scope.Subckt != nil {
-					prefix = root.Cell.Scope.Subckt.Name.Text + "."
-				}
-				if !w.context(prefix, root) {
+				if !w.context(root.Prefix(), root) {
 					return
 				}
 			}

@@ -152,5 +152,5 @@ func ratingsIn(scope *circuit.Scope, d *circuit.Design) []circuit.NoteAt {
 // its model, without the number of its bin, or of the subckt that wraps it.
 func rated(r *parser.Rating, m part) bool {
 	pattern := parser.Fold(r.Model.Text)
-	return bias.Match(pattern, baseName(parser.Fold(m.Model))) || m.Wrapper != "" && bias.Match(pattern, m.Wrapper)
+	return circuit.Match(pattern, circuit.BaseName(parser.Fold(m.Model))) || m.Wrapper != "" && circuit.Match(pattern, m.Wrapper)
 }

@@ -7,6 +7,7 @@ import (
 
 	"triodeck/analysis"
 	"triodeck/analysis/bias"
+	"triodeck/analysis/circuit"
 	"triodeck/analysis/mos"
 	"triodeck/parser"
 )
@@ -112,7 +113,7 @@ func (list regionNotes) speaksOf(m part) bool {
 		}
 		for rest, more := path, true; more; {
 			head, tail, ok := strings.Cut(rest, ".")
-			if bias.Match(target, rest) || !ok && bias.Match(target, head) {
+			if circuit.Match(target, rest) || !ok && circuit.Match(target, head) {
 				return true
 			}
 			rest, more = tail, ok

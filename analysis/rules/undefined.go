@@ -2,12 +2,11 @@ package rules
 
 import (
 	"fmt"
-	"strings"
 
 	"triodeck/analysis"
 	"triodeck/analysis/circuit"
-	"triodeck/analysis/mos"
 	"triodeck/parser"
+	"triodeck/parser/spelling"
 )
 
 // missing is one undefined name with the cards that use it, in order.
@@ -85,17 +84,9 @@ func (m *missings) report(p *analysis.Pass, what string, known []string) {
 		if len(u.uses) > 1 {
 			f.Message += fmt.Sprintf(", and %s use it", listed(u.parts, 4))
 		}
-		if near := mos.Nearest(parser.Fold(u.name), known); near != "" {
+		if near := spelling.Nearest(parser.Fold(u.name), known); near != "" {
 			f.Message += fmt.Sprintf(": did you mean %q?", near)
 		}
 		p.Report(f)
 	}
-}
-
-// baseName is a model's name without the number of its bin.
-func baseName(name string) string {
-	if i := strings.LastIndexByte(name, '.'); i > 0 && strings.Trim(name[i+1:], "0123456789") == "" {
-		return name[:i]
-	}
-	return name
 }

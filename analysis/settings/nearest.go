@@ -2,14 +2,13 @@ package settings
 
 import (
 	"slices"
-
-	"triodeck/analysis/mos"
+	"triodeck/parser/spelling"
 )
 
 // didYouMean is `: did you mean "x"?` for the nearest of the known words, or
 // nothing if none is near.
 func didYouMean(word string, known []string) string {
-	near := mos.Nearest(word, slices.Sorted(slices.Values(known)))
+	near := spelling.Nearest(word, slices.Sorted(slices.Values(known)))
 	if near == "" {
 		return ""
 	}

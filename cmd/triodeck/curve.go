@@ -31,8 +31,7 @@ func (c *curveCmd) Run(ctx context.Context, s streams) error {
 		return err
 	}
 	result := snap.Deck(c.Deck).Bias(ctx)
-	pick := opCmd{Deck: c.Deck, Mode: nonEmpty(c.Mode), Corner: nonEmpty(c.Corner)}
-	if err := pick.known(result); err != nil {
+	if err := knownRuns(c.Deck, result, nonEmpty(c.Mode), nonEmpty(c.Corner)); err != nil {
 		return err
 	}
 	drawn, err := curve.Of(result, curve.Request{Device: c.Device, Quantity: c.Of, Along: c.Along, Mode: c.Mode, Corner: c.Corner})

@@ -24,7 +24,7 @@ func (c *opCmd) Run(ctx context.Context, s streams) error {
 		return err
 	}
 	result := snap.Deck(c.Deck).Bias(ctx)
-	if err := c.known(result); err != nil {
+	if err := knownRuns(c.Deck, result, c.Mode, c.Corner); err != nil {
 		return err
 	}
 	report := newOpReport(c.Deck, result, func(run *bias.Run) bool {
@@ -46,15 +46,15 @@ func wanted(list []string, name string) bool {
 	return len(list) == 0 || slices.ContainsFunc(list, func(w string) bool { return strings.EqualFold(w, name) })
 }
 
-// known refuses a mode or corner that the deck does not have.
-func (c *opCmd) known(r *bias.Result) error {
+// knownRuns refuses a mode or corner that the deck does not have.
+func knownRuns(deck string, r *bias.Result, modes, corners []string) error {
 	for _, part := range []struct {
 		what       string
 		asked, has []string
-	}{{"mode", c.Mode, r.Modes}, {"corner", c.Corner, r.Corners}} {
+	}{{"mode", modes, r.Modes}, {"corner", corners, r.Corners}} {
 		for _, name := range part.asked {
 			if !wanted(part.has, name) {
-				return fmt.Errorf("%s has no %s %q; it has: %s", c.Deck, part.what, name, named(part.has))
+				return fmt.Errorf("%s has no %s %q; it has: %s", deck, part.what, name, named(part.has))
 			}
 		}
 	}

@@ -1,4 +1,4 @@
-package bias
+package circuit
 
 import "testing"
 

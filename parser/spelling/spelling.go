@@ -1,4 +1,5 @@
-package mos
+// Package spelling finds the word that a misspelt one means. It knows words alone.
+package spelling
 
 // Nearest gives the known name that a misspelt one most likely means, or "" when
 // none is close: at most one edit for names up to four letters, two above.
